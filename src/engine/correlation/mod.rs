@@ -1,0 +1,3 @@
+//! Correlations: records of published coefficients and one small evaluator per functional form.
+
+pub mod packing;

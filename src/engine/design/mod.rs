@@ -1,0 +1,1 @@
+//! Rating, sizing and balance.

@@ -1,0 +1,1 @@
+//! A disc cut by parallel walls and straight weirs.

@@ -1,0 +1,1 @@
+//! Physics of one stage on one side.

@@ -1,0 +1,1 @@
+//! Numerics: knows no physics.
