@@ -3,7 +3,7 @@
 use super::model::{Model, Stack};
 use crate::engine::case::Case;
 use crate::engine::error::{EngineError, EngineResult};
-use crate::engine::geometry::strip::{Disc, Strip, compartments};
+use crate::engine::geometry::{Disc, Strip, compartments};
 use crate::engine::hydraulics::section::SectionGeometry;
 use crate::engine::units::{Length, Si};
 
@@ -43,7 +43,7 @@ pub(crate) struct SideGeometry {
 impl EndGeometry {
     /// The whole disc, above or below the wall.
     pub fn new(stack: &Stack<'_>, diameter_m: f64) -> EngineResult<Self> {
-        let strip = Disc::new(Length::from_si(diameter_m))?.whole();
+        let strip = Disc::from_diameter(Length::from_si(diameter_m))?.whole()?;
         let sections = stack
             .sections
             .iter()
@@ -56,7 +56,7 @@ impl EndGeometry {
 impl ZoneGeometry {
     /// The compartments of a shell of this diameter with walls at these positions (by band, by wall).
     pub fn new(model: &Model<'_>, diameter_m: f64, positions_m: Vec<Vec<f64>>) -> EngineResult<Self> {
-        let disc = Disc::new(Length::from_si(diameter_m))?;
+        let disc = Disc::from_diameter(Length::from_si(diameter_m))?;
         let thickness = model.case.wall.thickness;
         let bands = positions_m
             .iter()

@@ -3,6 +3,8 @@
 use crate::engine::case::{Case, Criteria, Foaming, InternalsKind, Section};
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::correlation::form::wetting::WettingMinimum;
+use crate::engine::correlation::form::{Evaluator, Form};
+use crate::engine::hydraulics::packing::first_of;
 use crate::engine::correlation::packing::{Packing, PackingKind};
 use crate::engine::error::EngineResult;
 use crate::engine::findings::{Amount, Criterion};
@@ -136,8 +138,8 @@ impl SectionLimits {
         let (velocity_m_s, residence_s) = model.tray().map_or((f64::NAN, f64::NAN), |tray| {
             let practice = &tray.methods.downcomer;
             (
-                practice.velocity_m_s(foaming, tray.spacing_m) * section.system_factor,
-                practice.residence_s(foaming),
+                practice.velocity_m_s(tray.foaming, tray.spacing_m) * section.system_factor,
+                practice.residence_s(tray.foaming),
             )
         });
         let packing = match kind {
@@ -230,7 +232,7 @@ impl SectionLimits {
 }
 
 fn wetting(statements: &Statements<'_>, catalogue: &Catalogue, packing: &Packing) -> EngineResult<Limit> {
-    let minimum = WettingMinimum::from_record(catalogue.record("wetting-minimum")?)?;
+    let minimum = WettingMinimum::from_record(first_of(catalogue, Form::WettingMinimum)?)?;
     let kind = match packing.kind {
         PackingKind::Structured => "structured packing",
         PackingKind::Random => "random packing",
@@ -238,7 +240,7 @@ fn wetting(statements: &Statements<'_>, catalogue: &Catalogue, packing: &Packing
     Ok(statements.or_default(
         Criterion::Wetting,
         |c| c.wetting.map(|w| w.si()),
-        minimum.liquid_load_m_s(packing.kind, packing.material),
+        minimum.least_m_s(packing.kind, packing.material),
         &format!("least liquid load by kind and material, {kind} (from memory)"),
     ))
 }

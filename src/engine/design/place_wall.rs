@@ -1,11 +1,11 @@
 //! Where the wall stands: equal flood, equal pressure drop, by vapour load.
 
-use super::arrangement::{ZoneGeometry, wall_count};
+use super::arrangement::ZoneGeometry;
 use super::model::Model;
 use super::zone::Zone;
 use crate::engine::case::Position;
 use crate::engine::error::{EngineError, EngineResult};
-use crate::engine::geometry::strip::{Disc, compartments};
+use crate::engine::geometry::{Disc, positions_for_shares};
 use crate::engine::solve::optimise::{DesignRoot, design_root};
 use crate::engine::units::{Length, Si};
 
@@ -103,17 +103,11 @@ fn weights(model: &Model<'_>, band: usize, weight: Weight) -> Vec<f64> {
 
 /// Areas in proportion to weights.
 fn by_weight(model: &Model<'_>, diameter_m: f64, weights: &[f64]) -> EngineResult<Vec<f64>> {
-    let disc = Disc::new(Length::from_si(diameter_m))?;
-    let thickness = model.case.wall.thickness;
-    sweep(model, diameter_m, even(model, diameter_m), |positions, wall| {
-        let lengths: Vec<Length> = positions.iter().map(|x| Length::from_si(*x)).collect();
-        let strips = compartments(&disc, &lengths, thickness)?;
-        let need = |side: usize| match (strips.get(side), weights.get(side)) {
-            (Some(strip), Some(weight)) => (weight / strip.area().si()).ln(),
-            _ => f64::NAN,
-        };
-        Ok(need(wall) - need(wall + 1))
-    })
+    let disc = Disc::from_diameter(Length::from_si(diameter_m))?;
+    let sum: f64 = weights.iter().sum();
+    let shares: Vec<f64> = weights.iter().map(|weight| weight / sum).collect();
+    let positions = positions_for_shares(&disc, &shares, model.case.wall.thickness)?;
+    Ok(positions.into_iter().map(Si::si).collect())
 }
 
 /// Equal pressure drop at the design point and the required shares, moving the walls of one band.
@@ -143,12 +137,6 @@ pub(crate) fn equal_drop(
         }
     })?;
     Ok(with(&found))
-}
-
-/// Walls evenly spaced across the shell.
-fn even(model: &Model<'_>, diameter_m: f64) -> Vec<f64> {
-    let walls = wall_count(model.case);
-    (1..=walls).map(|w| diameter_m * (w as f64 / (walls + 1) as f64 - 0.5)).collect()
 }
 
 /// Puts every wall where `residual(positions, wall)` is zero. The residual compares the two neighbours of the wall (need of the

@@ -1,5 +1,6 @@
 //! Rating of one section at one point and one factor on its vapour: every row, every criterion, the worst row of each.
 
+use super::answer::shortest_path_m;
 use super::limits::{Limit, SectionLimits};
 use super::model::CompiledSection;
 use crate::engine::findings::Criterion;
@@ -129,7 +130,7 @@ fn judge_rows<'l>(
             }
         }
         if let Some(layout) = &geometry.layout {
-            path.take(None, layout.flow_path_m());
+            path.take(None, shortest_path_m(layout));
         }
         out.extend([flood, system, entrainment, froth, velocity, residence, apron, weir, weir_least, path, weep]);
     } else {

@@ -104,10 +104,20 @@ impl<'m> Zone<'m> {
     }
 }
 
-impl SideDrop<'_> {
+impl<'m> SideDrop<'m> {
     /// Puts a restriction at the lower edge: this loss at the required shares, going with the square of the vapour.
     pub fn add_restriction(&mut self, loss_pa: f64) {
         self.devices.push(DeviceDrop { loss_pa, travel: 1.0 });
+    }
+
+    /// Puts other hydraulics in one section.
+    pub fn replace<'s>(&mut self, section: usize, model: &'s SectionModel)
+    where
+        's: 'm,
+    {
+        for drop in self.sections.iter_mut().filter(|s| s.index == section) {
+            drop.model = model;
+        }
     }
 
     /// Friction of sections and devices, Pa, with the vapour at the lower edge multiplied by `bottom`.

@@ -9,8 +9,7 @@ use crate::engine::case::{Case, Deck, Extent, InternalsKind, Section};
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::correlation::range::Outside;
 use crate::engine::error::{EngineError, EngineResult};
-use crate::engine::geometry::strip::Strip;
-use crate::engine::geometry::tray_layout::TrayLayout;
+use crate::engine::geometry::{Strip, TrayLayout};
 use crate::engine::units::Si;
 
 /// Hydraulics of the internals of one section.
@@ -196,7 +195,7 @@ impl SectionModel {
     /// Name of the correlation that gives the flood.
     pub fn flood_method(&self) -> &str {
         match &self.hydraulics {
-            Hydraulics::Tray(tray) => &tray.methods.flood_id,
+            Hydraulics::Tray(tray) => &tray.methods.flood_name,
             Hydraulics::Packing(bed) => bed.flood_method(),
             Hydraulics::Declared(_) => "declared",
         }
@@ -205,7 +204,7 @@ impl SectionModel {
     /// Name of the correlation that gives the friction.
     pub fn drop_method(&self) -> Option<&str> {
         match &self.hydraulics {
-            Hydraulics::Tray(tray) => Some(&tray.methods.liquid_head_id),
+            Hydraulics::Tray(tray) => Some(&tray.methods.liquid_head_name),
             Hydraulics::Packing(bed) => Some(bed.drop_method()),
             Hydraulics::Declared(declared) => declared.has_resistance().then_some("declared"),
         }

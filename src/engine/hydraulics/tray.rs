@@ -5,10 +5,11 @@
 
 use super::load::StageLoad;
 use super::tray_methods::{LiquidHead, TrayMethods};
-use crate::engine::case::{Foaming, Tray};
+use crate::engine::case::Tray;
+use crate::engine::correlation::form::downcomer::FoamingClass;
 use crate::engine::correlation::range::Outside;
-use crate::engine::geometry::tray_layout::{Deck, Pass, TrayLayout};
-use crate::engine::units::{STANDARD_GRAVITY_M_S2, Si};
+use crate::engine::geometry::{Deck, Pass, TrayLayout};
+use crate::engine::units::{Length, STANDARD_GRAVITY_M_S2, Si};
 
 /// Rounds of the weir-crest iteration; each gains two to three digits, so the cap is never reached in practice.
 const CREST_ROUNDS: usize = 60;
@@ -27,7 +28,7 @@ pub(crate) struct SieveTray {
     pub downcomer_area: f64,
     pub clearance_m: f64,
     pub weir_open: f64,
-    pub foaming: Option<Foaming>,
+    pub foaming: FoamingClass,
     pub system_factor: f64,
     orifice_coefficient: f64,
     hole_area_factor: f64,
@@ -76,7 +77,7 @@ impl SieveTray {
             downcomer_area: tray.downcomer_area,
             clearance_m: tray.downcomer_clearance.si(),
             weir_open: tray.weir_open,
-            foaming: tray.foaming,
+            foaming: FoamingClass::from(tray.foaming),
             system_factor,
             methods,
         }
@@ -139,7 +140,7 @@ impl SieveTray {
             self.orifice_coefficient,
             load.rho_v_kg_m3,
             load.rho_l_kg_m3,
-            load.vapour_m3_s() / deck.hole_area().si(),
+            load.vapour_m3_s() / deck.hole_area.si(),
         )
     }
 
@@ -148,7 +149,7 @@ impl SieveTray {
     }
 
     fn weir_load_m2_s(&self, pass: &Pass, load: &StageLoad) -> f64 {
-        load.liquid_m3_s() * pass.liquid_fraction() / (pass.weir_length().si() * self.weir_open)
+        load.liquid_m3_s() * pass.liquid_fraction / (pass.weir.length().si() * self.weir_open)
     }
 
     /// Clear liquid on one pass by the chosen model, m.
@@ -157,7 +158,7 @@ impl SieveTray {
         match self.methods.liquid_head {
             LiquidHead::Bennett(_) => self.bennett_head_m(deck, weir_load_m2_s, load),
             LiquidHead::Aeration(fair) => {
-                let velocity_m_s = load.vapour_m3_s() / deck.active_area().si();
+                let velocity_m_s = load.vapour_m3_s() / deck.active_area.si();
                 let beta = fair.beta(velocity_m_s * load.rho_v_kg_m3.sqrt());
                 beta * (self.weir_height_m + self.crest_m(pass, load))
             }
@@ -166,19 +167,19 @@ impl SieveTray {
 
     /// Clear liquid by Bennett, Agrawal and Cook, which the weep rate takes whatever model gives the pressure drop.
     fn bennett_head_m(&self, deck: &Deck, weir_load_m2_s: f64, load: &StageLoad) -> f64 {
-        let ks_m_s = load.vapour_m3_s() / deck.active_area().si() * load.capacity_group();
+        let ks_m_s = load.vapour_m3_s() / deck.active_area.si() * load.capacity_group();
         self.methods.bennett.head_m(ks_m_s, self.weir_height_m, weir_load_m2_s)
     }
 
     /// Crest over the weir, m, with the constriction of the converging deck: the sheet contracts to the line that lies one
     /// first crest farther along the flow (the meaning of the chord formula in trays.md 6.5, kept for half-moons).
     fn crest_m(&self, pass: &Pass, load: &StageLoad) -> f64 {
-        let open_m = pass.weir_length().si() * self.weir_open;
-        let flow_m3_s = load.liquid_m3_s() * pass.liquid_fraction();
+        let open_m = pass.weir.length().si() * self.weir_open;
+        let flow_m3_s = load.liquid_m3_s() * pass.liquid_fraction;
         let mut effective_m = open_m;
         for _ in 0..CREST_ROUNDS {
             let first_crest_m = self.methods.weir.first_crest_m(flow_m3_s / effective_m);
-            let next_m = pass.weir_length_moved(first_crest_m) * self.weir_open;
+            let next_m = pass.weir.length_moved(Length::from_si(first_crest_m)).si() * self.weir_open;
             let settled = (next_m - effective_m).abs() <= CREST_TOLERANCE * open_m;
             effective_m = next_m;
             // A weir so short that the sheet would vanish has no crest by this formula; half its length is already absurd.
@@ -216,7 +217,7 @@ impl SieveTray {
         let residual_head_m = self.residual_head_m(load);
         let total_head_m = self.deck_head_m(deck, load);
         let crest_below_m = below.passes().iter().map(|pass| self.crest_m(pass, load)).fold(0.0, f64::max);
-        let hole_velocity_m_s = load.vapour_m3_s() / deck.hole_area().si();
+        let hole_velocity_m_s = load.vapour_m3_s() / deck.hole_area.si();
         let liquid_m3_s = load.liquid_m3_s();
 
         let mut out = TrayFigures {
@@ -231,10 +232,10 @@ impl SieveTray {
         let mut weep_m3_s = 0.0;
         for pass in deck.passes() {
             let heads = heads(deck, pass);
-            let flow_m3_s = liquid_m3_s * pass.liquid_fraction();
-            let top_m2 = pass.downcomer_top_area().si();
-            let bottom_m2 = pass.downcomer_bottom_area().si();
-            let under_apron_m2 = pass.apron_length().si() * self.clearance_m;
+            let flow_m3_s = liquid_m3_s * pass.liquid_fraction;
+            let top_m2 = pass.downcomer_top_area.si();
+            let bottom_m2 = pass.downcomer_bottom_area.si();
+            let under_apron_m2 = pass.apron_length.si() * self.clearance_m;
             let apron_head_m = self.methods.apron.head_m(flow_m3_s, top_m2.min(under_apron_m2));
             let backup_m = total_head_m + self.weir_height_m + crest_below_m + apron_head_m;
             let froth_m = backup_m / self.methods.downcomer.froth_density(self.foaming);
@@ -249,7 +250,7 @@ impl SieveTray {
                 weep_head_m,
                 load.rho_v_kg_m3,
                 load.rho_l_kg_m3,
-            ) * deck.hole_area().si()
+            ) * deck.hole_area.si()
                 / deck.passes().len() as f64;
 
             out.liquid_head_m = out.liquid_head_m.max(heads.liquid_head_m);
@@ -282,7 +283,6 @@ impl SieveTray {
         if flow_parameter < m.low_flow.below_flow_parameter {
             m.low_flow.outside(self.spacing_m, flow_parameter, found);
         }
-        m.surface_tension.outside(load.sigma_n_m, found);
         m.hole_area.outside(self.hole_area, found);
         m.entrainment.outside(flood, flow_parameter, found);
         m.orifice.outside(self.deck_thickness_m / self.hole_diameter_m, self.hole_area, found);
@@ -292,7 +292,7 @@ impl SieveTray {
                 m.onset.outside(head_m, self.hole_diameter_m, load.rho_v_kg_m3, found);
             }
         }
-        m.downcomer.outside(self.foaming, self.spacing_m, found);
+        m.downcomer.outside(self.spacing_m, found);
     }
 }
 
