@@ -6,7 +6,9 @@ use super::strip::Strip;
 use crate::engine::error::EngineResult;
 use crate::engine::units::{Area, Length, Si};
 
-/// Passes of the placing iteration; each gains about the digits of thickness over radius.
+/// Passes of the placing iteration: repeated substitution first, each pass gaining about the digits of thickness over radius,
+/// then bisection, which needs about 55.
+const SUBSTITUTIONS: usize = 20;
 const MOST_PASSES: usize = 100;
 
 /// The compartments that walls of one thickness leave, from the most negative positions on: one more than walls.
@@ -72,30 +74,47 @@ pub fn positions_for_shares(disc: &Disc, shares: &[f64], thickness: Length) -> E
     if !(sum.is_finite() && shares.iter().all(|&share| share > 0.0)) {
         return Err(geometry_error(format!("shares {shares:?} cannot divide the disc; each must be positive")));
     }
-    let walls = shares.len().saturating_sub(1);
-    // The area left depends on where the walls stand, but weakly: a fixed point, nearly reached after a pass or two.
-    let mut left_over = disc.area();
-    for _ in 0..MOST_PASSES {
-        let mut positions = Vec::with_capacity(walls);
-        let mut occupied = Area::from_si(0.0);
-        let mut left = -disc.radius();
-        for &share in shares.iter().take(walls) {
-            let position = position_for_area(disc, left, left_over * (share / sum), thickness)?;
-            occupied += wall_area(disc, position, thickness)?;
-            positions.push(position);
-            left = position + thickness / 2.0;
-        }
-        let next = disc.area() - occupied;
-        if (next - left_over).abs() <= 2.0 * f64::EPSILON * disc.area() {
+    // The area that the walls leave depends on where they stand. More area moves every wall to the right and leaves less
+    // for the last compartment, so there is one answer; walls that no longer fit mean that the area was taken too large.
+    let rounding = 4.0 * f64::EPSILON * disc.area();
+    let (mut low, mut high) = (Area::from_si(0.0), disc.area());
+    let mut area = disc.area();
+    for pass in 0..MOST_PASSES {
+        let placed = place_walls(disc, shares, area / sum, thickness);
+        let left_over = placed.as_ref().map_or(low, |(_, occupied)| disc.area() - *occupied);
+        if let Ok((positions, _)) = placed
+            && (left_over - area).abs() <= rounding
+        {
             return Ok(positions);
         }
-        left_over = next;
+        if left_over > area {
+            low = area;
+        } else {
+            high = area;
+        }
+        let substitute = pass < SUBSTITUTIONS && left_over > low && left_over < high;
+        area = if substitute { left_over } else { 0.5 * (low + high) };
     }
     Err(geometry_error(format!(
         "no positions found that divide a disc of {} m in the shares {shares:?} with walls {} m thick; thinner walls would",
         disc.diameter().si(),
         thickness.si()
     )))
+}
+
+/// Walls from left to right, each compartment but the last of its share times `unit_area`; the area that they occupy.
+fn place_walls(disc: &Disc, shares: &[f64], unit_area: Area, thickness: Length) -> EngineResult<(Vec<Length>, Area)> {
+    let walls = shares.len().saturating_sub(1);
+    let mut positions = Vec::with_capacity(walls);
+    let mut occupied = Area::from_si(0.0);
+    let mut left = -disc.radius();
+    for &share in shares.iter().take(walls) {
+        let position = position_for_area(disc, left, unit_area * share, thickness)?;
+        occupied += wall_area(disc, position, thickness)?;
+        positions.push(position);
+        left = position + thickness / 2.0;
+    }
+    Ok((positions, occupied))
 }
 
 fn half_thickness(thickness: Length) -> EngineResult<Length> {
@@ -153,6 +172,19 @@ mod tests {
         let sum: f64 = strips.iter().map(|strip| strip.area().si()).sum();
         for (strip, share) in strips.iter().zip(shares) {
             assert!((strip.area().si() / sum - share).abs() < 1e-15);
+        }
+    }
+
+    #[test]
+    fn small_last_share_behind_thick_walls_is_found() {
+        // Taking the whole disc to be shared out would push the last wall through the shell.
+        let (disc, thick) = (Disc::from_diameter(Length::from_si(0.4)).unwrap(), Length::from_si(0.0079));
+        let shares = [0.658, 0.436, 0.803, 0.1];
+        let positions = positions_for_shares(&disc, &shares, thick).unwrap();
+        let strips = compartments(&disc, &positions, thick).unwrap();
+        let sum: f64 = strips.iter().map(|strip| strip.area().si()).sum();
+        for (strip, share) in strips.iter().zip(shares) {
+            assert!((strip.area().si() / sum - share / 1.997).abs() < 1e-14);
         }
     }
 

@@ -4,7 +4,6 @@
 
 use super::piece::{Arc, squares_left};
 use crate::engine::error::{EngineError, EngineResult};
-use std::f64::consts::PI;
 
 /// The part of the disc between two lines x = const.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -194,45 +193,54 @@ impl DiscStrip {
             return None;
         }
         let reach_m = half_chord_m(self.radius_m - line_m, self.radius_m + line_m);
-        let left_rest = squares_left(self.radius_m, self.left_m, line_m);
-        let right_rest = squares_left(self.radius_m, self.right_m, line_m);
-        self.cap_from(line_m, reach_m, left_rest, right_rest)
+        let height_m = |x_m: f64, half_chord_m: f64| {
+            let rest_m2 = squares_left(self.radius_m, x_m, line_m);
+            if rest_m2 == 0.0 { 0.0 } else { rest_m2 / (half_chord_m + line_m) }
+        };
+        let left_height_m = height_m(self.left_m, self.left_half_chord_m);
+        self.cap_from(line_m, reach_m, left_height_m, height_m(self.right_m, self.right_half_chord_m))
     }
 
     /// What lies above the line `depth_m` below the strip's highest point; keeps the digits of small depths.
     fn cap_below_top(&self, depth_m: f64) -> Option<Cap> {
         let top_m = self.top_m();
-        let line_m = (top_m - depth_m).max(0.0);
         let fall_m2 = depth_m * (2.0 * top_m - depth_m);
-        let slope_m2 = self.width_m * (self.left_m + self.right_m);
-        let (reach_m, left_rest, right_rest) = if self.left_m > 0.0 {
-            ((self.left_m * self.left_m + fall_m2).sqrt(), fall_m2, fall_m2 - slope_m2)
+        // How far the two ends of the upper arc lie below the highest point, as differences of squares over sums.
+        let end_to_end_m2 = self.width_m * (self.left_m + self.right_m);
+        let (from_axis_m2, left_drop_m2, right_drop_m2) = if self.left_m > 0.0 {
+            (self.left_m * self.left_m, 0.0, end_to_end_m2)
         } else if self.right_m < 0.0 {
-            ((self.right_m * self.right_m + fall_m2).sqrt(), fall_m2 + slope_m2, fall_m2)
+            (self.right_m * self.right_m, -end_to_end_m2, 0.0)
         } else {
-            (fall_m2.sqrt(), fall_m2 - self.left_m * self.left_m, fall_m2 - self.right_m * self.right_m)
+            (0.0, self.left_m * self.left_m, self.right_m * self.right_m)
         };
-        self.cap_from(line_m, reach_m, left_rest, right_rest)
+        let height_m = |drop_m2: f64, half_chord_m: f64| depth_m - drop_m2 / (top_m + half_chord_m);
+        self.cap_from(
+            (top_m - depth_m).max(0.0),
+            (from_axis_m2 + fall_m2).sqrt(),
+            height_m(left_drop_m2, self.left_half_chord_m),
+            height_m(right_drop_m2, self.right_half_chord_m),
+        )
     }
 
-    /// `reach_m` is half of the disc's chord on the line; the rests are r^2 - x^2 - line^2 at the two ends: negative where
-    /// the line has left the disc before it meets that end of the strip.
-    fn cap_from(&self, line_m: f64, reach_m: f64, left_rest_m2: f64, right_rest_m2: f64) -> Option<Cap> {
-        let (left_inside, right_inside) = (left_rest_m2 > 0.0, right_rest_m2 > 0.0);
+    /// `reach_m` is half of the disc's chord on the line; the heights are those of the two ends of the upper arc above the
+    /// line: negative where the line has left the disc before it meets that end.
+    fn cap_from(&self, line_m: f64, reach_m: f64, left_height_m: f64, right_height_m: f64) -> Option<Cap> {
+        let (left_inside, right_inside) = (left_height_m > 0.0, right_height_m > 0.0);
         if (!left_inside && self.left_m >= 0.0) || (!right_inside && self.right_m <= 0.0) {
             return None;
         }
-        let width_m = self.line_width_m(reach_m, left_rest_m2, right_rest_m2);
-        let (from_m, left_height_m) = if left_inside {
-            ((self.left_m, self.left_half_chord_m), left_rest_m2 / (self.left_half_chord_m + line_m))
-        } else {
-            ((-reach_m, line_m), 0.0)
+        let width_m = self.line_width_m(
+            reach_m,
+            left_height_m * (self.left_half_chord_m + line_m),
+            right_height_m * (self.right_half_chord_m + line_m),
+        );
+        let end_m = |inside: bool, x_m: f64, half_chord_m: f64, height_m: f64| match inside {
+            true => ((x_m, half_chord_m), height_m),
+            false => ((reach_m.copysign(x_m), line_m), 0.0),
         };
-        let (to_m, right_height_m) = if right_inside {
-            ((self.right_m, self.right_half_chord_m), right_rest_m2 / (self.right_half_chord_m + line_m))
-        } else {
-            ((reach_m, line_m), 0.0)
-        };
+        let (from_m, left_height_m) = end_m(left_inside, self.left_m, self.left_half_chord_m, left_height_m);
+        let (to_m, right_height_m) = end_m(right_inside, self.right_m, self.right_half_chord_m, right_height_m);
         (width_m > 0.0).then_some(Cap {
             line_m,
             arc: Arc { radius_m: self.radius_m, from_m, to_m, width_m },
@@ -241,7 +249,8 @@ impl DiscStrip {
         })
     }
 
-    /// Length of a line inside the strip; arguments as for `cap_from`.
+    /// Length of a line inside the strip. `reach_m` is half of the disc's chord on the line; the rests are
+    /// r^2 - x^2 - line^2 at the two ends, negative where the line has left the disc before it meets that end.
     fn line_width_m(&self, reach_m: f64, left_rest_m2: f64, right_rest_m2: f64) -> f64 {
         match (left_rest_m2 > 0.0, right_rest_m2 > 0.0) {
             (true, true) => self.width_m,
@@ -361,9 +370,4 @@ impl Cap {
             about_x_m3: trapezoid_m2 * trapezoid_y_m + segment_m2 * segment_y_m,
         }
     }
-}
-
-/// Area of the whole disc, m2.
-pub(crate) fn disc_area_m2(radius_m: f64) -> f64 {
-    PI * radius_m * radius_m
 }

@@ -69,6 +69,8 @@ pub struct Pass {
     pub liquid_fraction: f64,
     /// Outlet weir.
     pub weir: Weir,
+    /// Signed distance from the axis of the line where the liquid enters the deck, as [`Weir::position`].
+    pub inlet_position: Length,
     /// Perforated area of this path, edge strips off.
     pub active_area: Area,
     /// Top of the downcomer, this path's part of it.
@@ -239,20 +241,23 @@ impl Layouter {
     }
 
     /// Line x = const with this area of the place on its left.
-    fn from_left_m(&self, area_m2: f64) -> EngineResult<f64> {
+    fn line_beyond_left_m(&self, area_m2: f64) -> EngineResult<f64> {
         Ok(self.strip.left_m() + width_from_left_m(self.strip.radius_m(), self.strip.left_m(), area_m2)?)
     }
 
     /// Line x = const with this area of the place on its right.
-    fn from_right_m(&self, area_m2: f64) -> EngineResult<f64> {
+    fn line_before_right_m(&self, area_m2: f64) -> EngineResult<f64> {
         Ok(self.strip.right_m() - width_from_left_m(self.strip.radius_m(), -self.strip.right_m(), area_m2)?)
     }
 
     fn across_one(&self) -> EngineResult<TrayLayout> {
         let (tops_m2, bottoms_m2) = (self.tops_m2(), self.bottoms_m2());
-        let (left_bottom_m, right_bottom_m) = (self.from_left_m(bottoms_m2)?, self.from_right_m(bottoms_m2)?);
-        let to_left = Lines { weir_m: self.from_left_m(tops_m2)?, inlet_m: right_bottom_m, apron_m: left_bottom_m };
-        let to_right = Lines { weir_m: self.from_right_m(tops_m2)?, inlet_m: left_bottom_m, apron_m: right_bottom_m };
+        let (left_bottom_m, right_bottom_m) =
+            (self.line_beyond_left_m(bottoms_m2)?, self.line_before_right_m(bottoms_m2)?);
+        let to_left =
+            Lines { weir_m: self.line_beyond_left_m(tops_m2)?, inlet_m: right_bottom_m, apron_m: left_bottom_m };
+        let to_right =
+            Lines { weir_m: self.line_before_right_m(tops_m2)?, inlet_m: left_bottom_m, apron_m: right_bottom_m };
         let decks = [self.deck_of_one(to_left)?, self.deck_of_one(to_right)?];
         // A place that is its own mirror image has one deck, seen from either side.
         let alternate = self.strip.left_m() != -self.strip.right_m();
@@ -262,13 +267,14 @@ impl Layouter {
     fn across_two(&self) -> EngineResult<TrayLayout> {
         let (tops_m2, bottoms_m2) = (self.tops_m2(), self.bottoms_m2());
         // Downcomers at the sides.
-        let side_weirs_m = [self.from_left_m(0.5 * tops_m2)?, self.from_right_m(0.5 * tops_m2)?];
-        let side_bottoms_m = [self.from_left_m(0.5 * bottoms_m2)?, self.from_right_m(0.5 * bottoms_m2)?];
+        let side_weirs_m = [self.line_beyond_left_m(0.5 * tops_m2)?, self.line_before_right_m(0.5 * tops_m2)?];
+        let side_bottoms_m = [self.line_beyond_left_m(0.5 * bottoms_m2)?, self.line_before_right_m(0.5 * bottoms_m2)?];
         // Strips between equal halves of what they leave: equal panels on the deck that has equal downcomers at its sides.
         let beside_tops_m2 = 0.5 * (self.area_m2 - tops_m2);
         let beside_bottoms_m2 = 0.5 * (self.area_m2 - bottoms_m2);
-        let centre_weirs_m = [self.from_left_m(beside_tops_m2)?, self.from_right_m(beside_tops_m2)?];
-        let centre_bottoms_m = [self.from_left_m(beside_bottoms_m2)?, self.from_right_m(beside_bottoms_m2)?];
+        let centre_weirs_m = [self.line_beyond_left_m(beside_tops_m2)?, self.line_before_right_m(beside_tops_m2)?];
+        let centre_bottoms_m =
+            [self.line_beyond_left_m(beside_bottoms_m2)?, self.line_before_right_m(beside_bottoms_m2)?];
         let lines = |weirs_m: [f64; 2], inlets_m: [f64; 2], aprons_m: [f64; 2]| {
             let ([weir_1, weir_2], [inlet_1, inlet_2], [apron_1, apron_2]) = (weirs_m, inlets_m, aprons_m);
             [
@@ -324,6 +330,7 @@ impl Layouter {
         Ok(Pass {
             liquid_fraction: fraction,
             weir: Weir { strip: self.strip, axis, position_m: lines.weir_m, towards, length_m },
+            inlet_position: Length::from_si(lines.inlet_m),
             active_area: Area::from_si(active_m2),
             downcomer_top_area: Area::from_si(fraction * self.tops_m2()),
             downcomer_bottom_area: Area::from_si(fraction * self.bottoms_m2()),
