@@ -92,6 +92,19 @@ impl Criterion {
             Self::Range => "range",
         }
     }
+
+    /// True if the limit is a least figure, false if it is a greatest one.
+    pub fn is_least(self) -> bool {
+        matches!(
+            self,
+            Self::ResponseExponent
+                | Self::DowncomerResidence
+                | Self::WeirLoadLeast
+                | Self::FlowPath
+                | Self::Wetting
+                | Self::ClearDepth
+        )
+    }
 }
 
 /// How a criterion came out; ordered from good to bad.

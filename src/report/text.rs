@@ -1,0 +1,37 @@
+//! Text from a case is data: nothing in it may steer a terminal, a spreadsheet or a reader's eye.
+
+/// Width of a report on a terminal, in columns.
+pub const COLUMNS: usize = 100;
+
+/// Control characters and those that change the reading direction become visible; the rest stays.
+pub fn inert(text: &str) -> String {
+    text.chars()
+        .map(|c| match c {
+            '\u{200b}'..='\u{200f}' | '\u{202a}'..='\u{202e}' | '\u{2060}'..='\u{206f}' | '\u{feff}' => '\u{fffd}',
+            c if c.is_control() => '\u{fffd}',
+            c => c,
+        })
+        .collect()
+}
+
+/// Paragraph wrapped to the report's width, with an indent for every line after the first.
+pub fn paragraph(text: &str, indent: &str) -> String {
+    let options = textwrap::Options::new(COLUMNS).subsequent_indent(indent);
+    textwrap::fill(text, options)
+}
+
+/// A paragraph of which every line is indented.
+pub fn indented(text: &str, indent: &str) -> String {
+    textwrap::fill(text, textwrap::Options::new(COLUMNS).initial_indent(indent).subsequent_indent(indent))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn escape_sequences_and_direction_marks_are_made_visible() {
+        assert_eq!(inert("a\u{1b}[31mb\u{202e}c\nd"), "a\u{fffd}[31mb\u{fffd}c\u{fffd}d");
+        assert_eq!(inert("Säule 3"), "Säule 3");
+    }
+}
