@@ -1,1 +1,18 @@
-//! Rating, sizing and balance.
+//! Rating, sizing and balance: from a checked case to an answer.
+
+mod answer;
+mod arrangement;
+mod balance;
+mod balance_many;
+mod column;
+mod judge;
+mod limits;
+mod model;
+mod place_wall;
+mod rate;
+mod remedy;
+mod size;
+mod state;
+mod zone;
+
+pub use answer::work;

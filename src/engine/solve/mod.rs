@@ -1,1 +1,4 @@
 //! Numerics: knows no physics.
+
+pub mod optimise;
+pub mod root;

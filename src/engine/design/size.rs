@@ -1,0 +1,299 @@
+//! Shell diameters: the smallest at which the sizing criteria hold at every point and the required shares (definition 4).
+
+use super::arrangement::{EndGeometry, ZoneGeometry};
+use super::column::column_drop_pa;
+use super::model::{Model, Stack};
+use super::place_wall::standing;
+use super::rate::{AT_LIMIT, rate, sizes_the_shell};
+use crate::engine::case::Diameter;
+use crate::engine::error::{EngineError, EngineResult};
+use crate::engine::findings::Criterion;
+use crate::engine::hydraulics::section::SectionGeometry;
+use crate::engine::solve::optimise::{DesignRoot, design_root};
+use crate::engine::units::Si;
+use std::f64::consts::PI;
+
+/// Tolerance of ln(diameter).
+const LOG_TOLERANCE: f64 = 1e-13;
+/// Logarithm that stands for "no answer at all in so small a shell"; far beyond any real miss.
+const HOPELESS: f64 = 20.0;
+/// How many of the next criteria are solved for the runner-up.
+const RUNNERS: usize = 3;
+/// Doublings of the diameter before sizing gives up.
+const DOUBLINGS: usize = 12;
+
+/// Part of the shell.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) enum Part {
+    Above,
+    WallZone,
+    Below,
+}
+
+/// The three parts, in the order of every array of diameters.
+pub(crate) const PARTS: [Part; 3] = [Part::Above, Part::WallZone, Part::Below];
+
+/// One criterion at its worst, as far as it may enlarge the shell.
+#[derive(Clone, Debug, PartialEq)]
+pub(crate) struct Margin {
+    pub criterion: Criterion,
+    /// Section index in the case; none for the whole column.
+    pub section: Option<usize>,
+    pub point: usize,
+    /// Figure over limit.
+    pub ratio: f64,
+}
+
+/// What a part of the shell needs.
+#[derive(Clone, Debug, PartialEq)]
+pub(crate) struct Need {
+    /// Least diameter by the flood criterion alone, m.
+    pub by_flood_m: f64,
+    /// Least diameter by all sizing criteria, m.
+    pub diameter_m: f64,
+    /// What sets it.
+    pub governing: Margin,
+    /// The next one and its own least diameter.
+    pub runner_up: Option<(Margin, f64)>,
+}
+
+/// Diameters found or given, with what each part needs.
+#[derive(Clone, Debug, PartialEq)]
+pub(crate) struct Sized {
+    /// Above, wall zone, below; m.
+    pub diameters_m: [f64; 3],
+    pub needs: [Need; 3],
+    /// Set if the column's pressure drop enlarged the shell: its margin, and the least diameter of each part.
+    pub by_column: Option<(Margin, [f64; 3])>,
+}
+
+/// Sizes what the case leaves open.
+pub(crate) fn size(model: &Model<'_>) -> EngineResult<Sized> {
+    let needs = [need(model, Part::Above)?, need(model, Part::WallZone)?, need(model, Part::Below)?];
+    let [above, zone, below] = &needs;
+    let shell = &model.case.shell;
+    let mut least_m = [above.diameter_m, zone.diameter_m, below.diameter_m];
+    if shell.one_diameter {
+        least_m = [least_m.iter().copied().fold(0.0, f64::max); 3];
+    }
+    let given = [shell.above, shell.wall_zone, shell.below];
+    let with_given = |least_m: [f64; 3]| {
+        let mut diameters_m = least_m;
+        for (diameter, given) in diameters_m.iter_mut().zip(given) {
+            if let Diameter::Given(length) = given {
+                *diameter = length.si();
+            }
+        }
+        diameters_m
+    };
+    let by_column = for_the_column(model, least_m, &with_given)?;
+    if let Some((_, enlarged_m)) = &by_column {
+        least_m = *enlarged_m;
+    }
+    let step_m = shell.step.si();
+    // A hair below a multiple is that multiple: rounding noise must not cost a step.
+    let rounded_m = least_m.map(|least| (least / step_m - 1e-9).ceil() * step_m);
+    Ok(Sized { diameters_m: with_given(rounded_m), needs, by_column })
+}
+
+/// What one part needs.
+fn need(model: &Model<'_>, part: Part) -> EngineResult<Need> {
+    let by_flood_m = flood_diameter_m(model, part)?;
+    let worst = |diameter_m: f64| -> EngineResult<f64> {
+        Ok(margins(model, part, diameter_m)?.map_or(HOPELESS, |list| {
+            list.iter().map(|m| m.ratio.ln()).fold(f64::NEG_INFINITY, f64::max).min(HOPELESS)
+        }))
+    };
+    let diameter_m = least_diameter_m(by_flood_m, worst)?;
+    let mut list = margins(model, part, diameter_m)?.ok_or_else(|| EngineError::Search {
+        what: "shell diameter".to_owned(),
+        why: "a correlation has no answer even at the diameter found".to_owned(),
+    })?;
+    list.sort_by(|a, b| b.ratio.total_cmp(&a.ratio));
+    let mut list = list.into_iter();
+    let governing = list.next().ok_or_else(|| EngineError::Search {
+        what: "shell diameter".to_owned(),
+        why: "no criterion concerns this part of the shell".to_owned(),
+    })?;
+    let mut runner_up: Option<(Margin, f64)> = None;
+    for margin in list.take(RUNNERS) {
+        let of_one = |diameter_m: f64| -> EngineResult<f64> {
+            let ratio = margins(model, part, diameter_m)?.and_then(|list| {
+                list.iter().find(|m| m.criterion == margin.criterion && m.section == margin.section).map(|m| m.ratio.ln())
+            });
+            Ok(ratio.map_or(HOPELESS, |r| r.min(HOPELESS)))
+        };
+        // A criterion that holds in every shell this search can build is no runner-up.
+        if let Ok(own_m) = smaller_diameter_m(diameter_m, of_one)
+            && runner_up.as_ref().is_none_or(|(_, best_m)| own_m > *best_m)
+        {
+            runner_up = Some((margin, own_m));
+        }
+    }
+    Ok(Need { by_flood_m, diameter_m, governing, runner_up })
+}
+
+/// Least diameter by flood alone.
+fn flood_diameter_m(model: &Model<'_>, part: Part) -> EngineResult<f64> {
+    let end = |stack: &Stack<'_>| (4.0 / PI * required_area_m2(stack, |_| true)).sqrt();
+    match part {
+        Part::Above => Ok(end(&model.above)),
+        Part::Below => Ok(end(&model.below)),
+        Part::WallZone => {
+            let areas_m2: f64 = model.sides.iter().map(|side| required_area_m2(side, |_| true)).sum();
+            // The walls' own area makes the shell larger than this.
+            let start_m = (4.0 / PI * areas_m2).sqrt();
+            let worst = |diameter_m: f64| -> EngineResult<f64> {
+                let zone = ZoneGeometry::new(model, diameter_m, standing(model, diameter_m)?)?;
+                let mut greatest = f64::NEG_INFINITY;
+                for (side, geometry) in model.sides.iter().zip(&zone.sides) {
+                    for (section, geometry) in side.sections.iter().zip(&geometry.sections) {
+                        let area_m2 = required_area_m2(side, |index| index == section.index);
+                        greatest = greatest.max((area_m2 / geometry.area_m2).ln());
+                    }
+                }
+                Ok(greatest)
+            };
+            least_diameter_m(start_m, worst)
+        }
+    }
+}
+
+/// Area of the place at which the worst row of all points stands at its flood limit, over the chosen sections of a stack.
+pub(crate) fn required_area_m2(stack: &Stack<'_>, chosen: impl Fn(usize) -> bool) -> f64 {
+    let mut greatest = 0.0_f64;
+    for section in stack.sections.iter().filter(|s| chosen(s.index)) {
+        for (point, limits) in section.limits.iter().enumerate() {
+            for load in section.loads_at(point) {
+                greatest = greatest.max(section.model.flooding_area_m2(load) / limits.flood.si);
+            }
+        }
+    }
+    greatest
+}
+
+/// Sizing margins of one part in a shell of this diameter; none if a row is beyond flood or the wall cannot stand in it.
+fn margins(model: &Model<'_>, part: Part, diameter_m: f64) -> EngineResult<Option<Vec<Margin>>> {
+    let mut out = Vec::new();
+    let fits = match part {
+        Part::Above => {
+            let geometry = EndGeometry::new(&model.above, diameter_m)?;
+            stack_margins(model, &model.above, &geometry.sections, &mut out)
+        }
+        Part::Below => {
+            let geometry = EndGeometry::new(&model.below, diameter_m)?;
+            stack_margins(model, &model.below, &geometry.sections, &mut out)
+        }
+        Part::WallZone => {
+            // In a shell too small for the wall, or where both sides are beyond flood, nothing can be placed.
+            let Ok(positions) = standing(model, diameter_m) else { return Ok(None) };
+            let Ok(zone) = ZoneGeometry::new(model, diameter_m, positions) else { return Ok(None) };
+            let mut fits = true;
+            for (side, geometry) in model.sides.iter().zip(&zone.sides) {
+                fits &= stack_margins(model, side, &geometry.sections, &mut out);
+            }
+            fits
+        }
+    };
+    Ok(fits.then_some(out))
+}
+
+/// False if a row is beyond flood.
+fn stack_margins(model: &Model<'_>, stack: &Stack<'_>, geometry: &[SectionGeometry], out: &mut Vec<Margin>) -> bool {
+    for (section, geometry) in stack.sections.iter().zip(geometry) {
+        let mut worst: Vec<Margin> = Vec::new();
+        for point in 0..model.points.len() {
+            let Ok(rating) = rate(section, geometry, point, 1.0) else { return false };
+            for judged in rating.judged.iter().filter(|j| sizes_the_shell(j.criterion)) {
+                let margin =
+                    Margin { criterion: judged.criterion, section: Some(section.index), point, ratio: judged.severity };
+                match worst.iter_mut().find(|m| m.criterion == margin.criterion) {
+                    Some(known) if known.ratio < margin.ratio => *known = margin,
+                    Some(_) => {}
+                    None => worst.push(margin),
+                }
+            }
+        }
+        out.extend(worst);
+    }
+    true
+}
+
+/// The least diameter at or above `start_m` at which `worst` (falling with the diameter) is not positive.
+fn least_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> EngineResult<f64> {
+    if worst(start_m)? <= AT_LIMIT {
+        return Ok(start_m);
+    }
+    let mut low_m = start_m;
+    let mut step = 1.02;
+    for _ in 0..DOUBLINGS * 8 {
+        let high_m = low_m * step;
+        if worst(high_m)? <= 0.0 {
+            let root = DesignRoot {
+                what: "shell diameter",
+                from: low_m.ln(),
+                to: high_m.ln(),
+                tolerance: LOG_TOLERANCE,
+            };
+            return design_root(root, |log_m| worst(log_m.exp())).map(f64::exp);
+        }
+        low_m = high_m;
+        step = (step * step).min(2.0);
+        if high_m > start_m * f64::from(1 << DOUBLINGS) {
+            break;
+        }
+    }
+    Err(EngineError::Search {
+        what: "shell diameter".to_owned(),
+        why: format!("criteria are still missed at {low_m:.1} m; look at the limits and at the tray layout"),
+    })
+}
+
+/// The diameter at or below `start_m` at which one criterion alone would stand at its limit.
+fn smaller_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> EngineResult<f64> {
+    let mut high_m = start_m;
+    for _ in 0..DOUBLINGS * 8 {
+        let low_m = high_m * 0.97;
+        if worst(low_m)? >= 0.0 {
+            let root =
+                DesignRoot { what: "shell diameter", from: low_m.ln(), to: high_m.ln(), tolerance: LOG_TOLERANCE };
+            return design_root(root, |log_m| worst(log_m.exp())).map(f64::exp);
+        }
+        high_m = low_m;
+    }
+    Err(EngineError::Search { what: "shell diameter".to_owned(), why: "the criterion never governs".to_owned() })
+}
+
+/// Enlarges all sized parts by one factor until the column's pressure drop holds; none if it holds already or has no limit.
+fn for_the_column(
+    model: &Model<'_>,
+    least_m: [f64; 3],
+    with_given: &impl Fn([f64; 3]) -> [f64; 3],
+) -> EngineResult<Option<(Margin, [f64; 3])>> {
+    if !model.column_limits.iter().any(|limits| limits.pressure_drop.is_some()) {
+        return Ok(None);
+    }
+    let any_sized = with_given(least_m) != with_given(least_m.map(|d| d * 2.0));
+    let worst_margin = |factor: f64| -> EngineResult<Option<Margin>> {
+        let diameters_m = with_given(least_m.map(|d| d * factor));
+        let mut worst: Option<Margin> = None;
+        for (point, limits) in model.column_limits.iter().enumerate() {
+            let Some(limit) = &limits.pressure_drop else { continue };
+            let Some(drop_pa) = column_drop_pa(model, diameters_m, point)? else { return Ok(None) };
+            let ratio = drop_pa / limit.si;
+            if worst.as_ref().is_none_or(|w| ratio > w.ratio) {
+                worst = Some(Margin { criterion: Criterion::PressureDrop, section: None, point, ratio });
+            }
+        }
+        Ok(worst)
+    };
+    let Some(margin) = worst_margin(1.0)? else { return Ok(None) };
+    if margin.ratio <= 1.0 + AT_LIMIT || !any_sized {
+        return Ok(None);
+    }
+    let worst = |factor: f64| -> EngineResult<f64> {
+        Ok(worst_margin(factor)?.map_or(HOPELESS, |m| m.ratio.ln().min(HOPELESS)))
+    };
+    let factor = least_diameter_m(1.0, worst)?;
+    Ok(Some((margin, least_m.map(|d| d * factor))))
+}
