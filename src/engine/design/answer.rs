@@ -22,13 +22,12 @@ use crate::engine::hydraulics::packing::first_of;
 use crate::engine::hydraulics::section::{Hydraulics, SectionGeometry};
 use crate::engine::hydraulics::tray::SieveTray;
 use crate::engine::result::{
-    Answer, BalanceResult, CompartmentResult, GovernedBy, SectionResult, ShellResult, Solution, StageResult, TrayResult,
-    WallResult,
+    Answer, BalanceResult, CompartmentResult, GovernedBy, SectionResult, ShellResult, Solution, StageResult,
+    TrayResult, WallResult,
 };
 use crate::engine::units::{
     Area, FFactor, Length, MassRate, Pressure, PressureGradient, Si, Time, Velocity, VolumeRate, WeirLoad,
 };
-use std::f64::consts::PI;
 
 /// The design point, at which the figures of an answer stand.
 const DESIGN: usize = 0;
@@ -52,9 +51,7 @@ pub fn work(case: &Case, catalogue: &Catalogue) -> EngineResult<Answer> {
     let findings = bench.findings()?;
     let verdict = findings.iter().map(|f| f.status).max().unwrap_or(Status::Met);
     let design = states.first().cloned().unwrap_or_default();
-    let split_missed = findings
-        .iter()
-        .any(|f| f.criterion == Criterion::VapourShareWithin && f.status != Status::Met)
+    let split_missed = findings.iter().any(|f| f.criterion == Criterion::VapourShareWithin && f.status != Status::Met)
         || (absent_because(&model).is_none() && design.actual.is_none());
     let remedies = if split_missed { remedies(&model, &arrangement.zone, &design) } else { Vec::new() };
     let records = records(&model)?;
@@ -84,7 +81,9 @@ fn with_remedies(mut findings: Vec<Finding>, remedies: &[crate::engine::result::
     }
     let ways: Vec<&str> = remedies.iter().map(|r| r.what.as_str()).collect();
     for finding in &mut findings {
-        if finding.status != Status::Met && matches!(finding.criterion, Criterion::VapourShareWithin | Criterion::Balance) {
+        if finding.status != Status::Met
+            && matches!(finding.criterion, Criterion::VapourShareWithin | Criterion::Balance)
+        {
             finding.because += &format!("; cure: {}", ways.join(", or "));
         }
     }
@@ -100,7 +99,8 @@ fn shell(model: &Model<'_>, sized: &Sized) -> ShellResult {
         wall_zone: Length::from_si(zone_m),
         below: Length::from_si(below_m),
         sized: was_sized,
-        required: [Part::Above, Part::WallZone, Part::Below].map(|part| Length::from_si(need_of(sized, part).by_flood_m)),
+        required: [Part::Above, Part::WallZone, Part::Below]
+            .map(|part| Length::from_si(need_of(sized, part).by_flood_m)),
         governed_by: governed_by(model, sized),
     }
 }
@@ -171,7 +171,12 @@ fn governed_by(model: &Model<'_>, sized: &Sized) -> GovernedBy {
     }
 }
 
-fn walls(model: &Model<'_>, arrangement: &Arrangement, by_rule: &Positions, design: &PointState) -> EngineResult<Vec<WallResult>> {
+fn walls(
+    model: &Model<'_>,
+    arrangement: &Arrangement,
+    by_rule: &Positions,
+    design: &PointState,
+) -> EngineResult<Vec<WallResult>> {
     let zone = &arrangement.zone;
     let disc = Disc::from_diameter(Length::from_si(zone.diameter_m))?;
     let mut out = Vec::new();
@@ -181,7 +186,8 @@ fn walls(model: &Model<'_>, arrangement: &Arrangement, by_rule: &Positions, desi
         } else {
             None
         };
-        let of = |list: &[Vec<f64>], wall: usize| list.get(band).and_then(|w| w.get(wall)).copied().map(Length::from_si);
+        let of =
+            |list: &[Vec<f64>], wall: usize| list.get(band).and_then(|w| w.get(wall)).copied().map(Length::from_si);
         let count = zone.positions_m.get(band).map_or(0, Vec::len);
         for wall in 0..count {
             let Some(position) = of(&zone.positions_m, wall) else { continue };
@@ -247,7 +253,11 @@ fn balance(model: &Model<'_>, design: &PointState) -> BalanceResult {
         imbalance_at_required: design.imbalance_pa().map(Pressure::from_si),
         solutions: all
             .iter()
-            .map(|b| Solution { shares: b.shares.clone(), pressure_drop: Pressure::from_si(b.pressure_pa), stable: b.stable })
+            .map(|b| Solution {
+                shares: b.shares.clone(),
+                pressure_drop: Pressure::from_si(b.pressure_pa),
+                stable: b.stable,
+            })
             .collect(),
         least_imbalance: if all.is_empty() { design.balances.least_imbalance_pa.map(Pressure::from_si) } else { None },
         absent_because: absent_because(model),
@@ -264,7 +274,14 @@ fn sections(bench: &Bench<'_, '_>) -> EngineResult<Vec<SectionResult>> {
         };
         for (section, geometry) in stack.sections.iter().zip(geometry) {
             let actual = bottom.map(|bottom| section.factor(DESIGN, bottom));
-            let result = section_result(bench.model, section, geometry, stack.place, required_area_m2(stack, |i| i == section.index), actual)?;
+            let result = section_result(
+                bench.model,
+                section,
+                geometry,
+                stack.place,
+                required_area_m2(stack, |i| i == section.index),
+                actual,
+            )?;
             out.push((section.index, result));
         }
     }
@@ -320,7 +337,11 @@ fn section_result(
         static_head: Pressure::from_si(section.static_pa(DESIGN)),
         governing_stage: stage(row),
         in_range: outside.0.is_empty() && outside.1.is_empty(),
-        tray: section.model.tray().zip(geometry.layout.as_ref()).map(|(tray, layout)| tray_result(tray, layout, loads, geometry.area_m2)),
+        tray: section
+            .model
+            .tray()
+            .zip(geometry.layout.as_ref())
+            .map(|(tray, layout)| tray_result(tray, layout, loads, geometry.area_m2)),
         stages: loads.iter().enumerate().map(|(row, load)| stage_result(section, geometry, load, stage(row))).collect(),
     })
 }
@@ -335,9 +356,15 @@ fn on_place(load: &StageLoad, area_m2: f64) -> (FFactor, Velocity, Velocity) {
     )
 }
 
-fn stage_result(section: &CompiledSection<'_>, geometry: &SectionGeometry, load: &StageLoad, stage: String) -> StageResult {
+fn stage_result(
+    section: &CompiledSection<'_>,
+    geometry: &SectionGeometry,
+    load: &StageLoad,
+    stage: String,
+) -> StageResult {
     let (f_factor, capacity_factor, liquid_load) = on_place(load, geometry.area_m2);
-    let gradient = if section.model.has_friction() { section.model.friction_gradient_pa_m(geometry, load) } else { None };
+    let gradient =
+        if section.model.has_friction() { section.model.friction_gradient_pa_m(geometry, load) } else { None };
     StageResult {
         stage,
         vapour_flow: MassRate::from_si(load.vapour_kg_s),
@@ -353,7 +380,8 @@ fn stage_result(section: &CompiledSection<'_>, geometry: &SectionGeometry, load:
 }
 
 fn tray_result(tray: &SieveTray, layout: &TrayLayout, loads: &[StageLoad], area_m2: f64) -> TrayResult {
-    let least = |pick: fn(&crate::engine::geometry::Deck) -> f64| layout.decks().iter().map(pick).fold(f64::INFINITY, f64::min);
+    let least =
+        |pick: fn(&crate::engine::geometry::Deck) -> f64| layout.decks().iter().map(pick).fold(f64::INFINITY, f64::min);
     let all: Vec<_> = loads.iter().map(|load| (load, tray.figures(layout, load))).collect();
     let greatest = |pick: &dyn Fn(&StageLoad, &crate::engine::hydraulics::tray::TrayFigures) -> f64| {
         all.iter().map(|(load, figures)| pick(load, figures)).fold(0.0, f64::max)
@@ -427,7 +455,11 @@ fn from_memory(model: &Model<'_>, records: &[String], findings: &[Finding]) -> V
             let used: Vec<&str> =
                 packing.from_memory.iter().map(String::as_str).filter(|key| bed.constants.contains(key)).collect();
             if !used.is_empty() {
-                out.push(format!("packing \"{}\": {}", packing.entry.as_deref().unwrap_or(&internals.name), used.join(", ")));
+                out.push(format!(
+                    "packing \"{}\": {}",
+                    packing.entry.as_deref().unwrap_or(&internals.name),
+                    used.join(", ")
+                ));
             }
         }
     }
@@ -443,7 +475,12 @@ fn from_memory(model: &Model<'_>, records: &[String], findings: &[Finding]) -> V
 fn limits(model: &Model<'_>) -> Vec<LimitUsed> {
     let mut out: Vec<(LimitUsed, Vec<String>)> = Vec::new();
     let mut add = |limit: &Limit, scope: String| {
-        let used = LimitUsed { criterion: limit.criterion, scope: String::new(), limit: limit.amount(), origin: limit.origin.clone() };
+        let used = LimitUsed {
+            criterion: limit.criterion,
+            scope: String::new(),
+            limit: limit.amount(),
+            origin: limit.origin.clone(),
+        };
         match out.iter_mut().find(|(known, _)| *known == used) {
             Some((_, scopes)) if !scopes.contains(&scope) => scopes.push(scope),
             Some(_) => {}
@@ -483,7 +520,9 @@ fn notes(model: &Model<'_>, arrangement: &Arrangement) -> Vec<String> {
     {
         out.push(because);
     }
-    if end_drop_pa(&model.above, &arrangement.above, DESIGN).is_none() || end_drop_pa(&model.below, &arrangement.below, DESIGN).is_none() {
+    if end_drop_pa(&model.above, &arrangement.above, DESIGN).is_none()
+        || end_drop_pa(&model.below, &arrangement.below, DESIGN).is_none()
+    {
         out.push("the column's pressure drop is not worked out: some internals have no declared resistance".to_owned());
     }
     out
@@ -492,7 +531,9 @@ fn notes(model: &Model<'_>, arrangement: &Arrangement) -> Vec<String> {
 /// Nothing leaves the engine that is not a number.
 fn check_finite(answer: &Answer) -> EngineResult<()> {
     let [above, zone, below] = answer.shell.required;
-    for (what, value) in [("diameter above the wall", above), ("diameter of the wall zone", zone), ("diameter below the wall", below)] {
+    for (what, value) in
+        [("diameter above the wall", above), ("diameter of the wall zone", zone), ("diameter below the wall", below)]
+    {
         finite(value.si(), what)?;
     }
     for compartment in &answer.compartments {

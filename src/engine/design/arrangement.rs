@@ -1,7 +1,6 @@
 //! A shell with its walls: areas and tray layouts of every section.
 
 use super::model::{Model, Stack};
-use crate::engine::case::Case;
 use crate::engine::error::{EngineError, EngineResult};
 use crate::engine::geometry::{Disc, Strip, compartments};
 use crate::engine::hydraulics::section::SectionGeometry;
@@ -16,7 +15,6 @@ pub(crate) struct Arrangement {
 
 /// Geometry above or below the wall.
 pub(crate) struct EndGeometry {
-    pub diameter_m: f64,
     /// As the sections of the stack.
     pub sections: Vec<SectionGeometry>,
     pub area_m2: f64,
@@ -49,7 +47,7 @@ impl EndGeometry {
             .iter()
             .map(|section| section.model.geometry(section.tray, &strip))
             .collect::<EngineResult<Vec<_>>>()?;
-        Ok(Self { diameter_m, sections, area_m2: strip.area().si() })
+        Ok(Self { sections, area_m2: strip.area().si() })
     }
 }
 
@@ -72,7 +70,9 @@ impl ZoneGeometry {
             .map(|(side, stack)| {
                 let strip_of = |band: usize| {
                     bands.get(band).and_then(|strips| strips.get(side)).ok_or_else(|| EngineError::Geometry {
-                        what: format!("band {band} has no compartment {side}; every band needs one position for each wall"),
+                        what: format!(
+                            "band {band} has no compartment {side}; every band needs one position for each wall"
+                        ),
                     })
                 };
                 let sections = stack
@@ -120,9 +120,4 @@ impl Arrangement {
             .chain(self.zone.sides.iter().map(|side| (side.sections.as_slice(), side.area_m2)))
             .chain(std::iter::once((self.below.sections.as_slice(), self.below.area_m2)))
     }
-}
-
-/// Number of walls of a case.
-pub(crate) fn wall_count(case: &Case) -> usize {
-    case.compartments.len().saturating_sub(1)
 }

@@ -155,8 +155,7 @@ fn take(zone: &Zone<'_>, chosen: &[Piece], pressure_pa: f64, found: &mut Balance
     if found.all.iter().any(|b| near(&b.shares)) {
         return;
     }
-    let slopes: Option<Vec<f64>> =
-        shares.iter().enumerate().map(|(side, share)| zone.slope_pa(side, *share)).collect();
+    let slopes: Option<Vec<f64>> = shares.iter().enumerate().map(|(side, share)| zone.slope_pa(side, *share)).collect();
     let stable = slopes.is_none_or(|slopes| is_stable(&slopes));
     found.all.push(Balance { shares, pressure_pa, stable });
 }

@@ -61,7 +61,9 @@ impl Bench<'_, '_> {
     ) -> EngineResult<()> {
         for (stack, (geometry, _)) in self.model.stacks().zip(self.arrangement.stacks()) {
             let bottom = match stack.place {
-                Place::Compartment(side) => self.states.get(point).and_then(|s| s.actual_factor(self.model, point, side)),
+                Place::Compartment(side) => {
+                    self.states.get(point).and_then(|s| s.actual_factor(self.model, point, side))
+                }
                 _ => None,
             };
             for (section, geometry) in stack.sections.iter().zip(geometry) {
@@ -134,7 +136,8 @@ impl Bench<'_, '_> {
                 .iter()
                 .map(|o| ((o.correlation.clone(), o.input.clone()), o.to_string(), o.value))
                 .chain(points.iter().map(|p| {
-                    let text = format!("declared points: {} {:.4} is outside {:.4} to {:.4}", p.what, p.value, p.min, p.max);
+                    let text =
+                        format!("declared points: {} {:.4} is outside {:.4} to {:.4}", p.what, p.value, p.min, p.max);
                     (("declared".to_owned(), p.what.to_owned()), text, p.value)
                 }));
             for (key, text, value) in sentences {
@@ -183,17 +186,24 @@ impl Bench<'_, '_> {
         let (status, because) = match (all.len(), stable) {
             (0, _) => (
                 Status::NotMet,
-                "no division of the vapour makes the pressure drops equal; value: the least imbalance met on the way".to_owned(),
+                "no division of the vapour makes the pressure drops equal; value: the least imbalance met on the way"
+                    .to_owned(),
             ),
-            (_, 0) => (Status::NotMet, "the pressure drops are equal somewhere, but no such state is stable".to_owned()),
+            (_, 0) => {
+                (Status::NotMet, "the pressure drops are equal somewhere, but no such state is stable".to_owned())
+            }
             (1, 1) => (Status::Met, "one division balances, and it is stable".to_owned()),
             (n, 1) => (
                 Status::Attention,
-                format!("{n} divisions balance; one of them is stable, the others are not: start-up may pass an unstable one"),
+                format!(
+                    "{n} divisions balance; one of them is stable, the others are not: start-up may pass an unstable one"
+                ),
             ),
             (n, s) => (
                 Status::NotMet,
-                format!("{n} divisions balance and {s} of them are stable: nothing tells which one the column will take"),
+                format!(
+                    "{n} divisions balance and {s} of them are stable: nothing tells which one the column will take"
+                ),
             ),
         };
         let value = match all.is_empty() {
@@ -208,7 +218,11 @@ impl Bench<'_, '_> {
             value: value.map(|pa| Amount::Pressure(Pressure::from_si(pa))),
             limit: None,
             status,
-            because: if all.is_empty() { because } else { format!("{because}; value: imbalance at the required shares") },
+            because: if all.is_empty() {
+                because
+            } else {
+                format!("{because}; value: imbalance at the required shares")
+            },
         }
     }
 
@@ -252,7 +266,13 @@ impl Bench<'_, '_> {
     }
 
     /// Trays: the exponents by the other liquid-head model too, since the two differ most just here.
-    fn other_liquid_head(&self, point: usize, state: &PointState, limit: &Limit, out: &mut Vec<Finding>) -> EngineResult<()> {
+    fn other_liquid_head(
+        &self,
+        point: usize,
+        state: &PointState,
+        limit: &Limit,
+        out: &mut Vec<Finding>,
+    ) -> EngineResult<()> {
         let mut other = Vec::new();
         for (index, side) in self.model.sides.iter().enumerate() {
             for section in &side.sections {
@@ -271,7 +291,9 @@ impl Bench<'_, '_> {
             }
         }
         for (index, (side, compartment)) in zone.sides.iter().zip(&self.model.case.compartments).enumerate() {
-            let Some(name) = other.iter().find(|(i, _, _)| *i == index).and_then(|(_, _, m)| m.drop_method()) else { continue };
+            let Some(name) = other.iter().find(|(i, _, _)| *i == index).and_then(|(_, _, m)| m.drop_method()) else {
+                continue;
+            };
             let required = side.exponents(1.0).ok();
             let actual = state.actual_factor(self.model, point, index).and_then(|bottom| side.exponents(bottom).ok());
             let by = format!(", liquid head by {name}");
@@ -321,12 +343,28 @@ impl Bench<'_, '_> {
     /// Definition 9: vapour less liquid agrees across both ends of the wall.
     fn loads_agree(&self, point: usize, out: &mut Vec<Finding>) {
         let model = self.model;
-        let net = |load: Option<&crate::engine::hydraulics::load::StageLoad>| load.map(|l| (l.vapour_kg_s - l.liquid_kg_s, l.vapour_kg_s));
+        let net = |load: Option<&crate::engine::hydraulics::load::StageLoad>| {
+            load.map(|l| (l.vapour_kg_s - l.liquid_kg_s, l.vapour_kg_s))
+        };
         let lower: Option<Vec<_>> = model.sides.iter().map(|side| net(side.bottom(point))).collect();
         let upper: Option<Vec<_>> = model.sides.iter().map(|side| net(side.top(point))).collect();
         let ends = [
-            ("lower edge", lower, net(model.below.top(point)), Reach::Bottom, "the compartments' last rows", "the first row below the wall"),
-            ("upper edge", upper, net(model.above.bottom(point)), Reach::Top, "the compartments' first rows", "the last row above the wall"),
+            (
+                "lower edge",
+                lower,
+                net(model.below.top(point)),
+                Reach::Bottom,
+                "the compartments' last rows",
+                "the first row below the wall",
+            ),
+            (
+                "upper edge",
+                upper,
+                net(model.above.bottom(point)),
+                Reach::Top,
+                "the compartments' first rows",
+                "the last row above the wall",
+            ),
         ];
         for (edge, sides, end, closed, of_sides, of_end) in ends {
             let (Some(sides), Some((end_net, end_vapour))) = (sides, end) else { continue };
@@ -354,7 +392,10 @@ impl Bench<'_, '_> {
     fn clear_depth(&self, out: &mut Vec<Finding>) {
         let Some(limit) = self.model.column_limits.first().map(|l| &l.clear_depth) else { return };
         let sides = self.arrangement.zone.sides.iter().zip(&self.model.case.compartments);
-        let Some((side, compartment)) = sides.min_by(|(a, _), (b, _)| a.clear_depth_m.total_cmp(&b.clear_depth_m)) else { return };
+        let Some((side, compartment)) = sides.min_by(|(a, _), (b, _)| a.clear_depth_m.total_cmp(&b.clear_depth_m))
+        else {
+            return;
+        };
         let met = side.clear_depth_m >= limit.si * (1.0 - AT_LIMIT);
         out.push(Finding {
             criterion: Criterion::ClearDepth,
@@ -403,7 +444,12 @@ fn share_finding(
         Some((low, high)) => {
             let limit = if actual < low { low } else { high };
             let met = (low..=high).contains(&actual);
-            (actual, limit, met, format!("share {actual:.4}, required {required:.4}; band {low} to {high}: case, [[compartment]]"))
+            (
+                actual,
+                limit,
+                met,
+                format!("share {actual:.4}, required {required:.4}; band {low} to {high}: case, [[compartment]]"),
+            )
         }
         None => {
             let miss = (actual - required).abs();

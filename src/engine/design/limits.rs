@@ -4,10 +4,10 @@ use crate::engine::case::{Case, Criteria, Foaming, InternalsKind, Section};
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::correlation::form::wetting::WettingMinimum;
 use crate::engine::correlation::form::{Evaluator, Form};
-use crate::engine::hydraulics::packing::first_of;
 use crate::engine::correlation::packing::{Packing, PackingKind};
 use crate::engine::error::EngineResult;
 use crate::engine::findings::{Amount, Criterion};
+use crate::engine::hydraulics::packing::first_of;
 use crate::engine::hydraulics::section::SectionModel;
 use crate::engine::units::{Length, Pressure, PressureGradient, Si, Time, Velocity, WeirLoad};
 
@@ -102,15 +102,31 @@ impl<'a> Statements<'a> {
         })
     }
 
-    fn or_default(&self, criterion: Criterion, pick: impl Fn(&Criteria) -> Option<f64>, default: f64, origin: &str) -> Limit {
-        self.stated(criterion, pick)
-            .unwrap_or_else(|| Limit { criterion, si: default, origin: format!("default: {origin}"), stated: false })
+    fn or_default(
+        &self,
+        criterion: Criterion,
+        pick: impl Fn(&Criteria) -> Option<f64>,
+        default: f64,
+        origin: &str,
+    ) -> Limit {
+        self.stated(criterion, pick).unwrap_or_else(|| Limit {
+            criterion,
+            si: default,
+            origin: format!("default: {origin}"),
+            stated: false,
+        })
     }
 }
 
 impl SectionLimits {
     /// Resolves every limit of a section at a point.
-    pub fn new(case: &Case, catalogue: &Catalogue, section: &Section, model: &SectionModel, point: usize) -> EngineResult<Self> {
+    pub fn new(
+        case: &Case,
+        catalogue: &Catalogue,
+        section: &Section,
+        model: &SectionModel,
+        point: usize,
+    ) -> EngineResult<Self> {
         let statements = Statements::new(case, Some(section), point);
         let kind = case.internals.get(section.internals).map(|i| &i.kind);
         let is_tray = matches!(kind, Some(InternalsKind::Tray(_)));
@@ -148,8 +164,7 @@ impl SectionLimits {
         };
         let wetting = packing.map(|packing| wetting(&statements, catalogue, packing)).transpose()?;
         let bed_pressure_drop = packing.and_then(|_| {
-            let stated = statements
-                .stated(Criterion::BedPressureDrop, |c| c.bed_pressure_drop.map(|g| g.si()));
+            let stated = statements.stated(Criterion::BedPressureDrop, |c| c.bed_pressure_drop.map(|g| g.si()));
             let default = vacuum.then(|| Limit {
                 criterion: Criterion::BedPressureDrop,
                 si: 200.0,
@@ -161,7 +176,12 @@ impl SectionLimits {
         let s = &statements;
         Ok(Self {
             flood: s.or_default(Criterion::ApproachToFlood, |c| c.approach_to_flood, flood, flood_origin),
-            entrainment: s.or_default(Criterion::Entrainment, |c| c.entrainment, 0.10, "design limit (published, trays.md 4.3)"),
+            entrainment: s.or_default(
+                Criterion::Entrainment,
+                |c| c.entrainment,
+                0.10,
+                "design limit (published, trays.md 4.3)",
+            ),
             froth: s.or_default(
                 Criterion::DowncomerFroth,
                 |c| c.downcomer_froth,

@@ -200,7 +200,9 @@ impl<'a> CompiledSection<'a> {
             .iter()
             .map(|point| point.loads.get(index).map_or_else(Vec::new, |rows| rows.iter().map(StageLoad::new).collect()))
             .collect();
-        let limits = (0..case.points.len()).map(|p| SectionLimits::new(case, catalogue, section, &model, p)).collect::<EngineResult<_>>()?;
+        let limits = (0..case.points.len())
+            .map(|p| SectionLimits::new(case, catalogue, section, &model, p))
+            .collect::<EngineResult<_>>()?;
         Ok(Self { index, section, model, tray, loads, travel: Vec::new(), limits })
     }
 

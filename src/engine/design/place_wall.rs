@@ -178,7 +178,9 @@ fn place_one(
     let thickness_m = model.case.wall.thickness.si();
     let gap_m = LEAST_GAP * diameter_m;
     let neighbour = |index: Option<usize>, edge: f64, sign: f64| {
-        index.and_then(|i| positions.get(i)).map_or(edge + sign * (0.5 * thickness_m + gap_m), |x| x + sign * (thickness_m + gap_m))
+        index
+            .and_then(|i| positions.get(i))
+            .map_or(edge + sign * (0.5 * thickness_m + gap_m), |x| x + sign * (thickness_m + gap_m))
     };
     let low = neighbour(wall.checked_sub(1), -0.5 * diameter_m, 1.0);
     let high = neighbour(Some(wall + 1), 0.5 * diameter_m, -1.0);

@@ -80,12 +80,9 @@ pub(crate) fn rate<'l>(
 ) -> Result<SectionRating<'l>, BeyondFlood> {
     let model = &section.model;
     let loads = section.loads_at(point);
-    let friction_pa =
-        if model.has_friction() { Some(model.friction_pa(geometry, loads, factor)?) } else { None };
-    let judged = section
-        .limits
-        .get(point)
-        .map_or_else(Vec::new, |limits| judge_rows(section, geometry, limits, loads, factor));
+    let friction_pa = if model.has_friction() { Some(model.friction_pa(geometry, loads, factor)?) } else { None };
+    let judged =
+        section.limits.get(point).map_or_else(Vec::new, |limits| judge_rows(section, geometry, limits, loads, factor));
     Ok(SectionRating { friction_pa, judged })
 }
 

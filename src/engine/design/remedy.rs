@@ -110,7 +110,8 @@ fn rate_points(model: &Model<'_>, geometry: &ZoneGeometry, change: Option<Change
             if let Some(change) = change
                 && let Some(side) = zone.sides.get_mut(change.side)
             {
-                let here_kg_s = model.sides.get(change.side).and_then(|s| s.bottom(point)).map_or(1.0, |l| l.vapour_kg_s);
+                let here_kg_s =
+                    model.sides.get(change.side).and_then(|s| s.bottom(point)).map_or(1.0, |l| l.vapour_kg_s);
                 side.add_restriction(change.added_pa * (here_kg_s / design_kg_s(change.side)).powi(2));
                 side.friction_scale = change.scale;
             }

@@ -100,9 +100,8 @@ pub(crate) fn size(model: &Model<'_>) -> EngineResult<Sized> {
 fn need(model: &Model<'_>, part: Part) -> EngineResult<Need> {
     let by_flood_m = flood_diameter_m(model, part)?;
     let worst = |diameter_m: f64| -> EngineResult<f64> {
-        Ok(margins(model, part, diameter_m)?.map_or(HOPELESS, |list| {
-            list.iter().map(|m| m.ratio.ln()).fold(f64::NEG_INFINITY, f64::max).min(HOPELESS)
-        }))
+        Ok(margins(model, part, diameter_m)?
+            .map_or(HOPELESS, |list| list.iter().map(|m| m.ratio.ln()).fold(f64::NEG_INFINITY, f64::max).min(HOPELESS)))
     };
     let diameter_m = least_diameter_m(by_flood_m, worst)?;
     let mut list = margins(model, part, diameter_m)?.ok_or_else(|| EngineError::Search {
@@ -119,7 +118,9 @@ fn need(model: &Model<'_>, part: Part) -> EngineResult<Need> {
     for margin in list.take(RUNNERS) {
         let of_one = |diameter_m: f64| -> EngineResult<f64> {
             let ratio = margins(model, part, diameter_m)?.and_then(|list| {
-                list.iter().find(|m| m.criterion == margin.criterion && m.section == margin.section).map(|m| m.ratio.ln())
+                list.iter()
+                    .find(|m| m.criterion == margin.criterion && m.section == margin.section)
+                    .map(|m| m.ratio.ln())
             });
             Ok(ratio.map_or(HOPELESS, |r| r.min(HOPELESS)))
         };
@@ -229,12 +230,8 @@ fn least_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> E
     for _ in 0..DOUBLINGS * 8 {
         let high_m = low_m * step;
         if worst(high_m)? <= 0.0 {
-            let root = DesignRoot {
-                what: "shell diameter",
-                from: low_m.ln(),
-                to: high_m.ln(),
-                tolerance: LOG_TOLERANCE,
-            };
+            let root =
+                DesignRoot { what: "shell diameter", from: low_m.ln(), to: high_m.ln(), tolerance: LOG_TOLERANCE };
             return design_root(root, |log_m| worst(log_m.exp())).map(f64::exp);
         }
         low_m = high_m;

@@ -14,7 +14,10 @@ pub(crate) struct DeclaredInternals {
 
 #[derive(Clone, Debug)]
 enum DeclaredResistance {
-    Power { pa_m: f64, exponent: f64 },
+    Power {
+        pa_m: f64,
+        exponent: f64,
+    },
     /// ln F, ln(Pa/m) and the slope d ln(Pa/m)/d ln F at each point.
     Points(Vec<[f64; 3]>),
 }
@@ -40,11 +43,7 @@ impl DeclaredInternals {
                 DeclaredResistance::Points(with_monotone_slopes(&logs))
             }
         });
-        Self {
-            capacity: declared.capacity.iter().map(|(x, c)| (*x, c.si())).collect(),
-            resistance,
-            system_factor,
-        }
+        Self { capacity: declared.capacity.iter().map(|(x, c)| (*x, c.si())).collect(), resistance, system_factor }
     }
 
     /// True if friction is declared.
@@ -153,7 +152,8 @@ mod tests {
 
     #[test]
     fn cubic_through_points_of_a_power_law_is_the_power_law() {
-        let logs: Vec<[f64; 2]> = [0.5_f64, 1.0, 2.0, 3.0].iter().map(|f| [f.ln(), (80.0 * f.powf(1.9)).ln()]).collect();
+        let logs: Vec<[f64; 2]> =
+            [0.5_f64, 1.0, 2.0, 3.0].iter().map(|f| [f.ln(), (80.0 * f.powf(1.9)).ln()]).collect();
         let points = with_monotone_slopes(&logs);
         for f in [0.3_f64, 0.5, 0.8, 1.7, 3.0, 4.0] {
             approx::assert_relative_eq!(hermite(&points, f.ln()).exp(), 80.0 * f.powf(1.9), max_relative = 1e-12);

@@ -65,7 +65,12 @@ impl PackedBed {
     ///
     /// # Errors
     /// [`Missing`] if no chart has a factor for the packing, or the pressure-drop method lacks constants.
-    pub fn new(packing: &Packing, system_factor: f64, catalogue: &Catalogue, methods: &Methods) -> Result<Self, Missing> {
+    pub fn new(
+        packing: &Packing,
+        system_factor: f64,
+        catalogue: &Catalogue,
+        methods: &Methods,
+    ) -> Result<Self, Missing> {
         let mut bed = Flood::default();
         let name = &methods.packing_flood;
         for record in catalogue.records_of(Task::PackingFlood, name) {
@@ -84,7 +89,8 @@ impl PackedBed {
         let mut records = bed.records;
         let mut constants = bed.constants;
         let asked = methods.packing_pressure_drop.as_deref();
-        let chosen = asked.unwrap_or(if packing.stichlmair.is_some() { "stichlmair" } else { "generalized pressure drop" });
+        let chosen =
+            asked.unwrap_or(if packing.stichlmair.is_some() { "stichlmair" } else { "generalized pressure drop" });
         let drop = drop_of(packing, catalogue, chosen, &mut records, &mut constants)?;
         records.sort();
         records.dedup();

@@ -84,7 +84,10 @@ impl SectionModel {
             (Extent::Height(height), _) => (height.si(), 0.0),
             (Extent::Trays(trays), Hydraulics::Tray(tray)) => (trays * tray.spacing_m, trays),
             (Extent::Trays(_), _) => {
-                return Err(no_method("a number of trays", "only trays are counted; give packed and declared sections a height"));
+                return Err(no_method(
+                    "a number of trays",
+                    "only trays are counted; give packed and declared sections a height",
+                ));
             }
         };
         Ok(Self { hydraulics, height_m, trays })
@@ -117,7 +120,12 @@ impl SectionModel {
     }
 
     /// Friction of the section, Pa, with every row's vapour multiplied by `factor`; each row stands for an equal part.
-    pub fn friction_pa(&self, geometry: &SectionGeometry, loads: &[StageLoad], factor: f64) -> Result<f64, BeyondFlood> {
+    pub fn friction_pa(
+        &self,
+        geometry: &SectionGeometry,
+        loads: &[StageLoad],
+        factor: f64,
+    ) -> Result<f64, BeyondFlood> {
         let mut sum = 0.0;
         for (row, load) in loads.iter().enumerate() {
             sum += self.row_friction(geometry, &load.with_vapour(factor)).ok_or(BeyondFlood { row })?;

@@ -5,7 +5,7 @@
 
 use super::load::StageLoad;
 use super::tray_methods::{LiquidHead, TrayMethods};
-use crate::engine::case::Tray;
+use crate::engine::case::{Foaming, Tray};
 use crate::engine::correlation::form::downcomer::FoamingClass;
 use crate::engine::correlation::range::Outside;
 use crate::engine::geometry::{Deck, Pass, TrayLayout};
@@ -77,7 +77,7 @@ impl SieveTray {
             downcomer_area: tray.downcomer_area,
             clearance_m: tray.downcomer_clearance.si(),
             weir_open: tray.weir_open,
-            foaming: FoamingClass::from(tray.foaming),
+            foaming: foaming_class(tray.foaming),
             system_factor,
             methods,
         }
@@ -91,10 +91,7 @@ impl SieveTray {
             // The default fit keeps rising where the chart turns down, so the lower of the two stands (trays.md 3.6).
             csb_m_s = csb_m_s.min(self.methods.low_flow.csb_m_s(self.spacing_m, flow_parameter));
         }
-        csb_m_s
-            * self.methods.surface_tension.factor(load.sigma_n_m)
-            * self.hole_area_factor
-            * self.system_factor
+        csb_m_s * self.methods.surface_tension.factor(load.sigma_n_m) * self.hole_area_factor * self.system_factor
             / load.capacity_group()
     }
 
@@ -155,8 +152,8 @@ impl SieveTray {
     /// Clear liquid on one pass by the chosen model, m.
     fn liquid_head_m(&self, deck: &Deck, pass: &Pass, load: &StageLoad) -> f64 {
         let weir_load_m2_s = self.weir_load_m2_s(pass, load);
-        match self.methods.liquid_head {
-            LiquidHead::Bennett(_) => self.bennett_head_m(deck, weir_load_m2_s, load),
+        match &self.methods.liquid_head {
+            LiquidHead::Bennett => self.bennett_head_m(deck, weir_load_m2_s, load),
             LiquidHead::Aeration(fair) => {
                 let velocity_m_s = load.vapour_m3_s() / deck.active_area.si();
                 let beta = fair.beta(velocity_m_s * load.rho_v_kg_m3.sqrt());
@@ -245,12 +242,8 @@ impl SieveTray {
                 load.rho_v_kg_m3,
             );
             let weep_head_m = self.bennett_head_m(deck, heads.weir_load_m2_s, load);
-            weep_m3_s += self.methods.weep.rate_m_s(
-                hole_velocity_m_s,
-                weep_head_m,
-                load.rho_v_kg_m3,
-                load.rho_l_kg_m3,
-            ) * deck.hole_area.si()
+            weep_m3_s += self.methods.weep.rate_m_s(hole_velocity_m_s, weep_head_m, load.rho_v_kg_m3, load.rho_l_kg_m3)
+                * deck.hole_area.si()
                 / deck.passes().len() as f64;
 
             out.liquid_head_m = out.liquid_head_m.max(heads.liquid_head_m);
@@ -293,6 +286,15 @@ impl SieveTray {
             }
         }
         m.downcomer.outside(self.spacing_m, found);
+    }
+}
+
+fn foaming_class(stated: Option<Foaming>) -> FoamingClass {
+    match stated {
+        None => FoamingClass::Unstated,
+        Some(Foaming::Low) => FoamingClass::Low,
+        Some(Foaming::Moderate) => FoamingClass::Moderate,
+        Some(Foaming::High) => FoamingClass::High,
     }
 }
 

@@ -1,5 +1,7 @@
 //! The correlations a sieve tray needs, resolved once from the catalogue.
 
+use super::packing::first_of;
+use crate::engine::case::Methods;
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::correlation::form::downcomer::{ApronLoss, DowncomerPractice};
 use crate::engine::correlation::form::tray_flood::{
@@ -12,14 +14,12 @@ use crate::engine::correlation::form::weep::{EduljeeWeep, LockettBanikWeep};
 use crate::engine::correlation::form::{Evaluator, Form};
 use crate::engine::correlation::record::{Record, Task};
 use crate::engine::error::{EngineError, EngineResult};
-use super::packing::first_of;
-use crate::engine::case::Methods;
 
 /// Which model gives the aerated liquid on the tray.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Debug)]
 pub(crate) enum LiquidHead {
-    /// Bennett, Agrawal and Cook.
-    Bennett(BennettLiquid),
+    /// Bennett, Agrawal and Cook, as in [`TrayMethods::bennett`].
+    Bennett,
     /// Fair's aeration factor.
     Aeration(FairAeration),
 }
@@ -95,7 +95,7 @@ impl TrayMethods {
     /// Swaps the liquid-head model for the other one, to see what hangs on it.
     pub fn take_other_liquid_head(&mut self, catalogue: &Catalogue) -> EngineResult<()> {
         let form = match self.liquid_head {
-            LiquidHead::Bennett(_) => Form::FairAeration,
+            LiquidHead::Bennett => Form::FairAeration,
             LiquidHead::Aeration(_) => Form::BennettLiquid,
         };
         let record = first_of(catalogue, form)?;
@@ -109,7 +109,7 @@ impl LiquidHead {
     fn from_record(record: &Record) -> EngineResult<Self> {
         match record.form {
             Form::FairAeration => FairAeration::from_record(record).map(Self::Aeration),
-            _ => BennettLiquid::from_record(record).map(Self::Bennett),
+            _ => Ok(Self::Bennett),
         }
     }
 }
