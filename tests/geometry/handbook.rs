@@ -25,6 +25,7 @@ fn angle_deg(depth_over_diameter: f64) -> f64 {
 /// Areas of circular segments over the square of the diameter, by depth over diameter: the table of partly filled pipes in
 /// handbooks of hydraulics (King, Handbook of Hydraulics; from memory).
 #[test]
+#[expect(clippy::approx_constant, reason = "digits as printed")]
 fn segment_areas_are_those_of_the_handbook() {
     let table = [
         (0.01, 0.0013),
@@ -140,6 +141,7 @@ fn corner_of_the_large_side_is_the_noted_one_and_the_segment_that_it_leaves_out(
 
 /// Wall geometry table of the method notes (gross, wall without thickness, diameter 1).
 #[test]
+#[expect(clippy::approx_constant, reason = "digits as printed")]
 fn wall_geometry_table_of_the_notes_comes_out() {
     let table = [
         (0.50, 0.0, 1.0, 0.5, 0.6110, 0.6110),

@@ -71,8 +71,6 @@ def corner(r, a, b, c):
         arc = 2 * r * (asin(b / r) - asin(a / r)) - arc
         moment_y = strip_centroid(r, a, b) * whole - moment_y
         area = whole - area
-        if c == 0:
-            line = b - a
     return area, line, arc, moment_y / area if area else mpf(0), moment_x / area if area else mpf(0)
 
 
