@@ -1,1 +1,18 @@
-//! Text to checked case.
+//! Text to checked case: what was typed (`raw`), then what is meant (`lower`), with every error of a file in one run.
+//! Nothing here opens a file: texts come in, data go out.
+#![deny(
+    clippy::unwrap_used,
+    clippy::expect_used,
+    clippy::panic,
+    clippy::indexing_slicing,
+    clippy::todo,
+    clippy::unimplemented
+)]
+
+pub mod diagnostic;
+mod open;
+mod write_back;
+
+pub use diagnostic::{Diagnostic, Diagnostics, Source};
+pub use open::{MAX_FILE_BYTES, Opened, decode, open};
+pub use write_back::{Found, WriteBackError, write_back};
