@@ -1,1 +1,11 @@
-//! The command line.
+//! The command line: the only part that opens files, and the only one that prints.
+
+pub mod args;
+mod commands;
+pub mod exit;
+mod files;
+mod render;
+mod run;
+
+pub use exit::Exit;
+pub use run::{Terminal, run};

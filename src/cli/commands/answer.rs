@@ -1,0 +1,117 @@
+//! `size` and `check`: read a case, work it, show and write the answer.
+
+use crate::cli::args::AnswerArgs;
+use crate::cli::exit::{Exit, Stop};
+use crate::cli::files;
+use crate::engine::case::Case;
+use crate::engine::correlation::catalogue::Catalogue;
+use crate::engine::design::work;
+use crate::engine::result::Answer;
+use crate::engine::units::Length;
+use crate::input::{Found, builtin, open, write_back};
+use crate::report::model::{Meta, Report, Show};
+use crate::report::{csv, json, markdown, terminal};
+use sha2::{Digest, Sha256};
+use std::io::Write;
+use std::path::Path;
+
+/// A case that was read, with what identifies it.
+struct Read {
+    text: String,
+    case: Case,
+    catalogue: Catalogue,
+    meta: Meta,
+}
+
+/// Finds what the case leaves open; writes it into a copy of the case if asked.
+pub fn size(args: &AnswerArgs, write: Option<&Path>, colour: bool, stdout: &mut dyn Write) -> Result<Exit, Stop> {
+    let read = read(args)?;
+    let answer = work(&read.case, &read.catalogue)?;
+    if let Some(path) = write {
+        let text = write_back(&read.text, &found(&answer)).map_err(|e| Stop::Usage(e.to_string()))?;
+        files::write_whole(path, text.as_bytes())?;
+    }
+    show(args, &read, &answer, false, colour, stdout)
+}
+
+/// Rates the case against every criterion and shows each limit with its origin.
+pub fn check(args: &AnswerArgs, colour: bool, stdout: &mut dyn Write) -> Result<Exit, Stop> {
+    let read = read(args)?;
+    let answer = work(&read.case, &read.catalogue)?;
+    show(args, &read, &answer, true, colour, stdout)
+}
+
+fn read(args: &AnswerArgs) -> Result<Read, Stop> {
+    let text = files::read_text(&args.case)?;
+    let name = files::name_of(&args.case);
+    let opened = open(&name, &text).map_err(Stop::Input)?;
+    let table = opened.table().map(str::to_owned).map(|table| files::read_beside(&args.case, &table)).transpose()?;
+    let catalogue = catalogue(args.correlations.as_deref())?;
+    let case = opened.check(table.as_deref(), &catalogue).map_err(Stop::Input)?;
+    let mut hash = Sha256::new();
+    hash.update(text.as_bytes());
+    hash.update(table.as_deref().unwrap_or_default().as_bytes());
+    let input_sha256 = hash.finalize().iter().map(|byte| format!("{byte:02x}")).collect();
+    let meta = Meta { version: env!("CARGO_PKG_VERSION").to_owned(), input_sha256, file: name };
+    Ok(Read { text, case, catalogue, meta })
+}
+
+/// The built-in correlations, and the user's beside them.
+pub fn catalogue(dir: Option<&Path>) -> Result<Catalogue, Stop> {
+    let unusable = |error: builtin::CatalogueError| Stop::Usage(error.to_string());
+    match dir {
+        Some(dir) => {
+            let files: Vec<(String, String)> = files::read_correlations(dir)?.into_iter().map(|s| (s.name, s.text)).collect();
+            builtin::catalogue_with(&files).map_err(unusable)
+        }
+        None => builtin::catalogue().map_err(unusable),
+    }
+}
+
+fn found(answer: &Answer) -> Found {
+    let mut bands: Vec<(&str, Vec<Length>)> = Vec::new();
+    for wall in &answer.walls {
+        match bands.last_mut() {
+            Some((band, positions)) if *band == wall.band => positions.push(wall.position),
+            _ => bands.push((&wall.band, vec![wall.position])),
+        }
+    }
+    Found {
+        above: answer.shell.above,
+        wall_zone: answer.shell.wall_zone,
+        below: answer.shell.below,
+        positions: bands.into_iter().map(|(_, positions)| positions).collect(),
+    }
+}
+
+fn show(
+    args: &AnswerArgs,
+    read: &Read,
+    answer: &Answer,
+    limits: bool,
+    colour: bool,
+    stdout: &mut dyn Write,
+) -> Result<Exit, Stop> {
+    let show = Show { display: args.display.into(), stages: args.stages, limits };
+    let document = || json::document(&read.case, answer, &read.meta, show);
+    let report = || Report::new(&read.case, answer, &read.meta, show);
+    let as_json = || json::bytes(&document()).map_err(|e| Stop::Usage(e.to_string()));
+    if let Some(path) = &args.out {
+        let bytes = match path.extension().and_then(|e| e.to_str()) {
+            Some("json") => as_json()?,
+            Some("csv") => csv::render(answer, &read.meta).map_err(|e| Stop::Usage(e.to_string()))?,
+            Some("md") => markdown::render(&report()),
+            _ => {
+                return Err(Stop::File {
+                    path: path.clone(),
+                    why: "the ending says what to write: .json, .csv or .md".to_owned(),
+                });
+            }
+        };
+        files::write_whole(path, &bytes)?;
+    }
+    let bytes = if args.json { as_json()? } else { terminal::render(&report(), colour).into_bytes() };
+    stdout.write_all(&bytes)?;
+    stdout.flush()?;
+    Ok(answer.verdict.into())
+}
