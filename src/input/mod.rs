@@ -1,1 +1,4 @@
 //! Text to checked case.
+
+pub mod builtin;
+pub mod correlation_file;
