@@ -9,6 +9,8 @@
     clippy::unimplemented
 )]
 
+pub mod builtin;
+pub mod correlation_file;
 pub mod diagnostic;
 mod open;
 mod write_back;
