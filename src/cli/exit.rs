@@ -58,8 +58,12 @@ impl Stop {
         match self {
             Self::Input(_) | Self::File { .. } | Self::Usage(_) => Exit::BadInput,
             Self::Engine(error) => match error {
-                EngineError::NoAnswer { .. } | EngineError::Search { .. } | EngineError::NotFinite { .. } => Exit::NoAnswer,
-                EngineError::NoMethod { .. } | EngineError::Geometry { .. } | EngineError::Record { .. } => Exit::BadInput,
+                EngineError::NoAnswer { .. } | EngineError::Search { .. } | EngineError::NotFinite { .. } => {
+                    Exit::NoAnswer
+                }
+                EngineError::NoMethod { .. } | EngineError::Geometry { .. } | EngineError::Record { .. } => {
+                    Exit::BadInput
+                }
             },
             Self::OutputClosed => Exit::Met,
         }

@@ -32,7 +32,9 @@ pub fn read_text(path: &Path) -> Result<String, Stop> {
 pub fn read_beside(case: &Path, name: &str) -> Result<String, Stop> {
     let folder = folder_of(case);
     let path = folder.join(name);
-    let real = |p: &Path| p.canonicalize().map_err(|e| refused(p, format!("cannot be read: {e}; it is looked for beside the case")));
+    let real = |p: &Path| {
+        p.canonicalize().map_err(|e| refused(p, format!("cannot be read: {e}; it is looked for beside the case")))
+    };
     if real(&path)?.parent() != Some(real(&folder)?.as_path()) {
         return Err(refused(&path, "leads out of the case's folder; put the table beside the case"));
     }

@@ -29,7 +29,8 @@ fn visible(text: &str) -> String {
 }
 
 fn graphical(diagnostics: &Diagnostics) -> String {
-    let handler = GraphicalReportHandler::new_themed(GraphicalTheme::unicode()).with_width(COLUMNS).with_context_lines(1);
+    let handler =
+        GraphicalReportHandler::new_themed(GraphicalTheme::unicode()).with_width(COLUMNS).with_context_lines(1);
     let mut out = String::new();
     for item in &diagnostics.items {
         let mut shown = MietteDiagnostic::new(inert(&item.message))
@@ -40,8 +41,11 @@ fn graphical(diagnostics: &Diagnostics) -> String {
         let report = match diagnostics.sources.get(item.source) {
             // Bytes keep their places: only characters of one byte that steer a terminal are replaced.
             Some(source) => {
-                let text: String =
-                    source.text.chars().map(|c| if c.is_ascii_control() && c != '\n' && c != '\r' && c != '\t' { '?' } else { c }).collect();
+                let text: String = source
+                    .text
+                    .chars()
+                    .map(|c| if c.is_ascii_control() && c != '\n' && c != '\r' && c != '\t' { '?' } else { c })
+                    .collect();
                 Report::new(shown).with_source_code(NamedSource::new(inert(&source.name), text))
             }
             None => Report::new(shown),

@@ -29,7 +29,7 @@ pub fn run(
         Err(error) => {
             let text = error.render();
             // Help and version are answers; everything else is a mistake in what was typed.
-            let (sink, exit, colour) = if error.use_stderr() {
+            let (sink, exit, colour): (&mut dyn Write, Exit, bool) = if error.use_stderr() {
                 (stderr, Exit::BadInput, terminal.colour_err)
             } else {
                 (stdout, Exit::Met, terminal.colour_out)
@@ -40,7 +40,9 @@ pub fn run(
     };
     let outcome = match &cli.command {
         Command::Start { dir } => commands::start::start(dir, stdout),
-        Command::Size { answer, write } => commands::answer::size(answer, write.as_deref(), terminal.colour_out, stdout),
+        Command::Size { answer, write } => {
+            commands::answer::size(answer, write.as_deref(), terminal.colour_out, stdout)
+        }
         Command::Check { answer } => commands::answer::check(answer, terminal.colour_out, stdout),
         Command::Methods { name, json, correlations } => {
             commands::methods::methods(name.as_deref(), *json, correlations.as_deref(), stdout)

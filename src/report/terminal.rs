@@ -6,10 +6,8 @@ use crate::engine::findings::Status;
 use prettytable::format::{Alignment, FormatBuilder, LinePosition, LineSeparator};
 use prettytable::{Cell, Row};
 
-/// Widest column of words, so that a table of long names still fits the report.
-const WORDS: usize = 22;
-/// Widest text in a table of limits or findings.
-const LONG_WORDS: usize = 34;
+/// Least width of a column of words; narrower ones break words.
+const LEAST_WORDS: usize = 10;
 
 /// The report as text; `colour` paints the verdict and each finding's status, never a table.
 pub fn render(report: &Report, colour: bool) -> String {
@@ -80,10 +78,10 @@ pub fn grid(table: &Table) -> String {
             .padding(0, 1)
             .build(),
     );
-    let wide = if table.words > 2 { LONG_WORDS } else { WORDS };
+    let widths = word_widths(table);
     let cell = |(column, text): (usize, &String)| {
         let align = if column < table.words { Alignment::LEFT } else { Alignment::RIGHT };
-        let text = if column < table.words { textwrap::fill(text, wide) } else { text.clone() };
+        let text = widths.get(column).map_or_else(|| text.clone(), |width| textwrap::fill(text, *width));
         Cell::new_align(&text, align)
     };
     let row = |cells: &[String]| Row::new(cells.iter().enumerate().map(cell).collect());
@@ -92,7 +90,29 @@ pub fn grid(table: &Table) -> String {
         grid.add_row(row(cells));
     }
     // prettytable pads every line to the table's width; trailing blanks only hinder comparing and copying.
-    let text: String = grid.to_string().lines().map(|line| format!("{}\n", line.trim_end())).collect();
-    debug_assert!(text.lines().count() > 0 && COLUMNS > 0);
-    text
+    grid.to_string().lines().map(|line| format!("{}\n", line.trim_end())).collect()
+}
+
+/// Widths of the columns of words: what the figures leave of the report's width, shared so that short columns give to long ones.
+fn word_widths(table: &Table) -> Vec<usize> {
+    let widest = |column: usize| {
+        let cells = table.rows.iter().filter_map(|row| row.get(column)).chain(table.heads.get(column));
+        cells.map(|cell| cell.chars().count()).max().unwrap_or(0)
+    };
+    let columns = table.heads.len();
+    // Each column carries a blank of padding and one of separation.
+    let figures: usize = (table.words..columns).map(widest).sum();
+    let mut left = COLUMNS.saturating_sub(figures + 2 * columns);
+    let mut widths = vec![0; table.words];
+    let mut order: Vec<usize> = (0..table.words).collect();
+    order.sort_by_key(|column| widest(*column));
+    for (done, column) in order.into_iter().enumerate() {
+        let fair = (left / (table.words - done)).max(LEAST_WORDS);
+        let width = widest(column).min(fair);
+        if let Some(place) = widths.get_mut(column) {
+            *place = width;
+        }
+        left = left.saturating_sub(width);
+    }
+    widths
 }

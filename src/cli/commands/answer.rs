@@ -15,6 +15,29 @@ use sha2::{Digest, Sha256};
 use std::io::Write;
 use std::path::Path;
 
+/// Kinds of files that `--out` writes.
+#[derive(Clone, Copy)]
+enum OutKind {
+    Json,
+    Csv,
+    Markdown,
+}
+
+/// Where `--out` writes and what; asked before anything is worked, so that a wrong ending costs nothing.
+fn out_kind(args: &AnswerArgs) -> Result<Option<(&Path, OutKind)>, Stop> {
+    let Some(path) = args.out.as_deref() else { return Ok(None) };
+    let kind = match path.extension().and_then(|e| e.to_str()) {
+        Some("json") => OutKind::Json,
+        Some("csv") => OutKind::Csv,
+        Some("md") => OutKind::Markdown,
+        _ => {
+            let why = "the ending says what to write: .json, .csv or .md".to_owned();
+            return Err(Stop::File { path: path.to_owned(), why });
+        }
+    };
+    Ok(Some((path, kind)))
+}
+
 /// A case that was read, with what identifies it.
 struct Read {
     text: String,
@@ -25,20 +48,22 @@ struct Read {
 
 /// Finds what the case leaves open; writes it into a copy of the case if asked.
 pub fn size(args: &AnswerArgs, write: Option<&Path>, colour: bool, stdout: &mut dyn Write) -> Result<Exit, Stop> {
+    let out = out_kind(args)?;
     let read = read(args)?;
     let answer = work(&read.case, &read.catalogue)?;
     if let Some(path) = write {
         let text = write_back(&read.text, &found(&answer)).map_err(|e| Stop::Usage(e.to_string()))?;
         files::write_whole(path, text.as_bytes())?;
     }
-    show(args, &read, &answer, false, colour, stdout)
+    show(args, out, &read, &answer, false, colour, stdout)
 }
 
 /// Rates the case against every criterion and shows each limit with its origin.
 pub fn check(args: &AnswerArgs, colour: bool, stdout: &mut dyn Write) -> Result<Exit, Stop> {
+    let out = out_kind(args)?;
     let read = read(args)?;
     let answer = work(&read.case, &read.catalogue)?;
-    show(args, &read, &answer, true, colour, stdout)
+    show(args, out, &read, &answer, true, colour, stdout)
 }
 
 fn read(args: &AnswerArgs) -> Result<Read, Stop> {
@@ -61,7 +86,8 @@ pub fn catalogue(dir: Option<&Path>) -> Result<Catalogue, Stop> {
     let unusable = |error: builtin::CatalogueError| Stop::Usage(error.to_string());
     match dir {
         Some(dir) => {
-            let files: Vec<(String, String)> = files::read_correlations(dir)?.into_iter().map(|s| (s.name, s.text)).collect();
+            let files: Vec<(String, String)> =
+                files::read_correlations(dir)?.into_iter().map(|s| (s.name, s.text)).collect();
             builtin::catalogue_with(&files).map_err(unusable)
         }
         None => builtin::catalogue().map_err(unusable),
@@ -86,6 +112,7 @@ fn found(answer: &Answer) -> Found {
 
 fn show(
     args: &AnswerArgs,
+    out: Option<(&Path, OutKind)>,
     read: &Read,
     answer: &Answer,
     limits: bool,
@@ -96,17 +123,11 @@ fn show(
     let document = || json::document(&read.case, answer, &read.meta, show);
     let report = || Report::new(&read.case, answer, &read.meta, show);
     let as_json = || json::bytes(&document()).map_err(|e| Stop::Usage(e.to_string()));
-    if let Some(path) = &args.out {
-        let bytes = match path.extension().and_then(|e| e.to_str()) {
-            Some("json") => as_json()?,
-            Some("csv") => csv::render(answer, &read.meta).map_err(|e| Stop::Usage(e.to_string()))?,
-            Some("md") => markdown::render(&report()),
-            _ => {
-                return Err(Stop::File {
-                    path: path.clone(),
-                    why: "the ending says what to write: .json, .csv or .md".to_owned(),
-                });
-            }
+    if let Some((path, kind)) = out {
+        let bytes = match kind {
+            OutKind::Json => as_json()?,
+            OutKind::Csv => csv::render(answer, &read.meta).map_err(|e| Stop::Usage(e.to_string()))?,
+            OutKind::Markdown => markdown::render(&report()),
         };
         files::write_whole(path, &bytes)?;
     }

@@ -13,7 +13,10 @@ pub fn start(dir: &Path, stdout: &mut dyn Write) -> Result<Exit, Stop> {
     files::make_folder(dir)?;
     let (case, loads) = (dir.join("case.toml"), dir.join("loads.csv"));
     if loads.exists() {
-        return Err(Stop::File { path: loads, why: "exists already and is not overwritten; choose another folder".to_owned() });
+        return Err(Stop::File {
+            path: loads,
+            why: "exists already and is not overwritten; choose another folder".to_owned(),
+        });
     }
     files::write_new(&case, CASE.as_bytes())?;
     files::write_new(&loads, LOADS.as_bytes())?;
