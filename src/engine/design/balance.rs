@@ -1,6 +1,7 @@
 //! The shares at which all compartments have the same pressure drop: every one of them, each stable or not.
 //!
-//! Two compartments are one equation in one share, scanned and then bracketed. More are solved over the common pressure drop,
+//! Two compartments are one equation in one share: bracketed at once where every characteristic is known to rise, scanned first
+//! where one may fall (trays). More are solved over the common pressure drop,
 //! on the rising and falling pieces of each compartment's own characteristic (`balance_many`).
 
 use super::balance_many;
@@ -10,8 +11,6 @@ use crate::engine::solve::root::{Evaluation, Tolerance, bracketed_with_signs};
 /// Intervals of the scan over the share. A characteristic that turns twice within one interval would need rows of more than
 /// one kind of falling branch; the local search between grid points below finds a pair of balances that lie closer.
 const SCAN_INTERVALS: usize = 40;
-/// Shares nearer than this to 0 or 1 are not looked at: no vapour at all on one side is no operating state.
-const SHARE_MARGIN: f64 = 1e-3;
 /// An imbalance below this part of the pressure drop counts as balanced.
 pub(crate) const BALANCED: f64 = 1e-9;
 /// Tolerance of a share.
@@ -33,6 +32,8 @@ pub(crate) struct Balances {
     pub all: Vec<Balance>,
     /// Least imbalance met on the way, Pa.
     pub least_imbalance_pa: Option<f64>,
+    /// Times that both sides' drops were worked out (two compartments).
+    pub evaluations: usize,
 }
 
 impl Balances {
@@ -77,12 +78,49 @@ fn sign(evaluation: Evaluation) -> f64 {
 }
 
 fn two(zone: &Zone<'_>) -> Balances {
+    if zone.rises() { rising(zone) } else { scanned(zone) }
+}
+
+/// Both drops rise with their vapour, so their difference rises with the share and crosses zero once at most.
+fn rising(zone: &Zone<'_>) -> Balances {
+    let mut found = Balances::default();
+    let (low, high) = (zone.least_share(0), 1.0 - zone.least_share(1));
+    let mut at_root: Option<(f64, f64)> = None;
+    let mut evaluations = 0;
+    let outcome = bracketed_with_signs(low, high, SHARE_TOLERANCE, |share| {
+        evaluations += 1;
+        match (zone.drop_pa(0, share), zone.drop_pa(1, 1.0 - share)) {
+            (Some(first), Some(second)) => {
+                if at_root.is_none_or(|(_, best)| (first - second).abs() < best) {
+                    at_root = Some((first, (first - second).abs()));
+                }
+                Evaluation::Value(first - second)
+            }
+            (Some(_), None) => Evaluation::Below,
+            // Both flooded at once: the greater share of the first side says on which side of the balance this is.
+            (None, _) => Evaluation::Above,
+        }
+    });
+    found.evaluations = evaluations;
+    found.least_imbalance_pa = at_root.map(|(_, gap)| gap);
+    if let (Ok(outcome), Some((pressure_pa, gap))) = (outcome, at_root)
+        && gap <= BALANCED * pressure_pa
+    {
+        let shares = vec![outcome.root, 1.0 - outcome.root];
+        found.all.push(Balance { shares, pressure_pa, stable: true });
+    }
+    found
+}
+
+fn scanned(zone: &Zone<'_>) -> Balances {
+    let (low, high) = (zone.least_share(0), 1.0 - zone.least_share(1));
     let mut found = Balances::default();
     let mut before: Option<(f64, f64)> = None;
     let mut two_before: Option<(f64, f64)> = None;
     for i in 0..=SCAN_INTERVALS {
-        let share = SHARE_MARGIN + (1.0 - 2.0 * SHARE_MARGIN) * i as f64 / SCAN_INTERVALS as f64;
+        let share = low + (high - low) * i as f64 / SCAN_INTERVALS as f64;
         let here = imbalance(zone, share).map(|evaluation| (share, sign(evaluation)));
+        found.evaluations += 1;
         if let Some((_, value)) = here {
             note_least(&mut found, value);
         }
@@ -123,6 +161,7 @@ fn refine(zone: &Zone<'_>, x0: f64, x1: f64, found: &mut Balances) {
     // Both sides flooded in between cannot happen: a side that floods at a share floods at every greater one of its own.
     let outcome = bracketed_with_signs(x0, x1, SHARE_TOLERANCE, |x| imbalance(zone, x).unwrap_or(Evaluation::Above));
     if let Ok(outcome) = outcome {
+        found.evaluations += outcome.evaluations;
         take_root(zone, outcome.root, found);
     }
 }

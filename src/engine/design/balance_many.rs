@@ -10,8 +10,6 @@ use crate::engine::solve::root::{Tolerance, bracketed};
 
 /// Grid points of a characteristic.
 const GRID: usize = 60;
-/// Least share looked at.
-const SHARE_MARGIN: f64 = 1e-3;
 /// Intervals of the scan over the pressure drop.
 const PRESSURE_INTERVALS: usize = 40;
 /// Combinations of pieces beyond which the search stops (real internals have one or two pieces each).
@@ -49,8 +47,9 @@ pub(crate) fn all_balances(zone: &Zone<'_>) -> Balances {
 
 fn pieces_of(zone: &Zone<'_>, side: usize) -> Vec<Piece> {
     let mut points: Vec<(f64, f64)> = Vec::with_capacity(GRID + 1);
+    let low = zone.least_share(side);
     for i in 0..=GRID {
-        let share = SHARE_MARGIN + (1.0 - 2.0 * SHARE_MARGIN) * i as f64 / GRID as f64;
+        let share = low + (1.0 - low) * i as f64 / GRID as f64;
         match zone.drop_pa(side, share) {
             Some(drop) => points.push((share, drop)),
             None => {

@@ -9,6 +9,7 @@ mod judge;
 mod limits;
 mod model;
 mod place_wall;
+mod probe;
 mod rate;
 mod remedy;
 mod size;
@@ -16,3 +17,4 @@ mod state;
 mod zone;
 
 pub use answer::work;
+pub use probe::Probe;

@@ -10,6 +10,9 @@ use crate::engine::hydraulics::section::{BeyondFlood, SectionGeometry, SectionMo
 /// below 1e-8.
 pub(crate) const DIFFERENCE_STEP: f64 = 1e-4;
 
+/// Least factor on any row's vapour, and least share, that a balance looks at: next to no vapour is no operating state.
+const LEAST_FACTOR: f64 = 1e-3;
+
 /// Both sides (or more) of the wall at one point.
 pub(crate) struct Zone<'m> {
     pub sides: Vec<SideDrop<'m>>,
@@ -93,6 +96,24 @@ impl<'m> Zone<'m> {
     pub fn drop_pa(&self, side: usize, share: f64) -> Option<f64> {
         let required = self.required.get(side)?;
         self.sides.get(side)?.drop_pa(share / required).ok()
+    }
+
+    /// Least share of one side at which every row of it still has vapour. Where vapour is drawn off or condensed between two
+    /// sections, the upper one runs dry before the lower edge does.
+    pub fn least_share(&self, side: usize) -> f64 {
+        let (Some(side), Some(required)) = (self.sides.get(side), self.required.get(side)) else { return LEAST_FACTOR };
+        let travels = side.sections.iter().map(|s| s.travel).chain(side.devices.iter().map(|d| d.travel));
+        let greatest = travels.fold(1.0, f64::max);
+        (required * (1.0 - (1.0 - LEAST_FACTOR) / greatest)).max(LEAST_FACTOR)
+    }
+
+    /// True if every compartment's drop is known to rise with its vapour: then there is one balance at most, and it is stable.
+    pub fn rises(&self) -> bool {
+        let travels_up = |travel: f64| travel >= 0.0;
+        self.sides.iter().all(|side| {
+            side.sections.iter().all(|s| s.model.friction_rises() && travels_up(s.travel))
+                && side.devices.iter().all(|d| travels_up(d.travel))
+        })
     }
 
     /// Slope d(drop)/d(share) of one side, Pa.

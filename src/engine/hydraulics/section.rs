@@ -111,6 +111,12 @@ impl SectionModel {
         }
     }
 
+    /// True if the friction is known to rise with the vapour at any load: packings and declared figures. The aerated liquid
+    /// on a tray falls as the vapour rises, so trays promise nothing.
+    pub fn friction_rises(&self) -> bool {
+        !matches!(self.hydraulics, Hydraulics::Tray(_))
+    }
+
     /// True if the section has a friction.
     pub fn has_friction(&self) -> bool {
         match &self.hydraulics {
@@ -144,7 +150,7 @@ impl SectionModel {
     }
 
     /// Friction of one row: Pa per tray, or Pa per metre of bed; none beyond flood.
-    fn row_friction(&self, geometry: &SectionGeometry, load: &StageLoad) -> Option<f64> {
+    pub fn row_friction(&self, geometry: &SectionGeometry, load: &StageLoad) -> Option<f64> {
         match (&self.hydraulics, &geometry.layout) {
             (Hydraulics::Tray(tray), Some(layout)) => Some(tray.drop_pa(layout, load)),
             (Hydraulics::Packing(bed), _) => bed.friction_pa_m(geometry.area_m2, load),
