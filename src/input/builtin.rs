@@ -2,7 +2,7 @@
 
 use super::correlation_file::{self, Content, CorrelationFileError, is_packing_table, split_table};
 use crate::engine::correlation::catalogue::{Catalogue, PackingEntry};
-use crate::engine::correlation::record::Record;
+use crate::engine::correlation::record::{Record, Task};
 use crate::engine::error::EngineError;
 use std::fmt;
 use std::path::Path;
@@ -162,6 +162,13 @@ pub fn catalogue_of(ids: &[&str], packings: &[&str]) -> Result<Catalogue, Catalo
     gathered.finish()
 }
 
+/// Identifiers of the built-in correlations that make up a method for a task, found without reading them.
+pub fn ids_serving(task: Task, method: &str) -> Vec<&'static str> {
+    let entry = format!("{{ task = \"{}\", method = \"{method}\" }}", task.name());
+    let serves = |text: &str| text.lines().take_while(|line| *line != "[source]").any(|line| line.contains(&entry));
+    FILES.iter().filter(|(_, text)| serves(text)).map(|(id, _)| *id).collect()
+}
+
 /// Names of the built-in packings, in the order of the tables.
 pub fn packing_names() -> Vec<&'static str> {
     tables().flat_map(|(_, text)| split_table(text).entries).map(|(name, ..)| name).collect()
@@ -174,7 +181,6 @@ fn tables() -> impl Iterator<Item = &'static (&'static str, &'static str)> {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::engine::correlation::record::Task;
 
     #[test]
     fn files_are_those_of_the_directory() {
@@ -213,6 +219,19 @@ mod tests {
         assert_eq!(whole.methods(Task::PackingFlood), ["generalized pressure drop"]);
         assert_eq!(whole.methods(Task::PackingPressureDrop), ["generalized pressure drop", "stichlmair"]);
         assert_eq!(whole.methods(Task::AeratedLiquid), ["bennett", "fair"]);
+    }
+
+    #[test]
+    fn ids_found_without_reading_are_those_of_the_records() {
+        let whole = catalogue().unwrap();
+        for task in Task::ALL {
+            assert!(!whole.methods(task).is_empty());
+            for method in whole.methods(task) {
+                let ids: Vec<&str> = whole.records_of(task, method).iter().map(|record| record.id.as_str()).collect();
+                assert_eq!(ids_serving(task, method), ids);
+            }
+            assert!(ids_serving(task, "nobody").is_empty());
+        }
     }
 
     #[test]

@@ -83,5 +83,8 @@ pub fn read_head(file: &str, stem: &str, text: &str) -> Result<Record, Correlati
 
 /// True for a file of packings: it has a `[[packing]]`.
 pub fn is_packing_table(text: &str) -> bool {
-    text.lines().any(|line| line.trim_end() == "[[packing]]")
+    text.contains("\n[[packing]]")
 }
+
+#[cfg(test)]
+mod tests;

@@ -36,14 +36,11 @@ pub(crate) struct TableText<'t> {
 
 /// Cuts a table at its `[[packing]]` lines. An entry whose name cannot be seen on a line of its own gets an empty name.
 pub(crate) fn split_table(text: &str) -> TableText<'_> {
-    let mut starts = Vec::new();
-    let (mut at, mut line_number) = (0, 1);
-    for line in text.split_inclusive('\n') {
-        if line.trim_end() == "[[packing]]" {
-            starts.push((at, line_number));
-        }
-        at += line.len();
-        line_number += 1;
+    let mut starts: Vec<(usize, usize)> = Vec::new();
+    for (at, _) in text.match_indices("\n[[packing]]") {
+        let (counted_to, lines) = starts.last().map_or((0, 1), |(at, line)| (*at, *line));
+        let between = text.get(counted_to..=at).unwrap_or("").matches('\n').count();
+        starts.push((at + 1, lines + between));
     }
     let header = text.get(..starts.first().map_or(text.len(), |(at, _)| *at)).unwrap_or(text);
     let ends = starts.iter().skip(1).map(|(at, _)| *at).chain([text.len()]);

@@ -34,14 +34,7 @@ pub(super) fn read(file: &str, stem: &str, text: &str, with_checks: bool) -> Res
 
 /// The part before the first `[[check]]`, and the rest.
 fn split_checks(text: &str) -> (&str, &str) {
-    let mut at = 0;
-    for line in text.split_inclusive('\n') {
-        if line.trim_end() == "[[check]]" {
-            return text.split_at(at);
-        }
-        at += line.len();
-    }
-    (text, "")
+    text.find("\n[[check]]").and_then(|at| text.split_at_checked(at + 1)).unwrap_or((text, ""))
 }
 
 fn head_of(mut keys: Keys<'_>, stem: &str, problems: &mut Problems<'_>) -> Option<Record> {
