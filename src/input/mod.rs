@@ -9,7 +9,9 @@
     clippy::unimplemented
 )]
 
+pub mod builtin;
 mod columns;
+pub mod correlation_file;
 pub mod diagnostic;
 mod loads;
 mod lower;

@@ -113,6 +113,8 @@ pub enum Dimension {
     PerLength,
     /// s.
     Time,
+    /// rad.
+    Angle,
     /// (m/s) (1/m)^0.5, the capacity parameter of the later packing chart before its viscosity term.
     CapacityParameter,
 }

@@ -196,3 +196,79 @@ impl Evaluator for Stichlmair {
         }
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn bed() -> StichlmairBed {
+        // Coefficients of the method and of its authors' saddle.
+        let method = Stichlmair {
+            drag_factor: 0.75,
+            void_exponent: 4.65,
+            hold_up_factor: 0.555,
+            hold_up_exponent: 1.0 / 3.0,
+            loading_factor: 20.0,
+        };
+        method.bed(260.0, 0.68, [32.0, 7.0, 1.0])
+    }
+
+    const RHO_L: f64 = 1200.0;
+
+    #[test]
+    fn a_guess_never_changes_the_answer() {
+        let (bed, hold_up) = (bed(), bed().hold_up(5e-3));
+        for u in [0.01, 0.1, 0.3, 0.5, 0.6, 0.639, 0.6394] {
+            let dry = bed.dry(u, 5.0, 5e-5);
+            let cold = bed.wet_pa_m(dry, hold_up, RHO_L, None).unwrap();
+            for guess in [1e-9, 0.5, 0.9, 0.999, 1.0, 1.001, 1.1, 2.0, 5.0, 1e6] {
+                let warm = bed.wet_pa_m(dry, hold_up, RHO_L, Some(cold * guess)).unwrap();
+                // Near flood the root is flat: rounding of 1e-16 in the equation is worth its root in the answer.
+                let tolerance = if u > 0.63 { 1e-9 } else { 1e-12 };
+                assert!((warm / cold - 1.0).abs() < tolerance, "{u} {guess}: {warm} {cold}");
+            }
+        }
+    }
+
+    #[test]
+    fn beyond_flood_there_is_none_for_any_guess() {
+        // The authors' example floods at 0.63943 m/s.
+        let (bed, hold_up) = (bed(), bed().hold_up(5e-3));
+        for u in [0.6395, 0.64, 0.7, 2.0, 1e3] {
+            let dry = bed.dry(u, 5.0, 5e-5);
+            for guess in [None, Some(100.0), Some(1991.0), Some(1e4)] {
+                assert_eq!(bed.wet_pa_m(dry, hold_up, RHO_L, guess), None, "{u} {guess:?}");
+            }
+        }
+        assert_eq!(bed.wet_pa_m(bed.dry(0.1, 5.0, 5e-5), 0.7, RHO_L, None), None, "liquid fills the bed");
+    }
+
+    #[test]
+    fn no_liquid_leaves_the_dry_pressure_drop() {
+        let bed = bed();
+        let dry = bed.dry(0.4, 5.0, 5e-5);
+        let wet = bed.wet_pa_m(dry, bed.hold_up(0.0), RHO_L, None).unwrap();
+        assert!((wet / dry.gradient_pa_m - 1.0).abs() < 1e-14);
+    }
+
+    #[test]
+    fn exponent_is_the_slope_of_the_friction_factor() {
+        let bed = bed();
+        let (u, d) = (0.4, 1e-5);
+        let f = |u: f64| bed.dry(u, 5.0, 5e-5).gradient_pa_m / (u * u);
+        let slope = (f(u * (1.0 + d)) / f(u * (1.0 - d))).ln() / ((1.0 + d) / (1.0 - d)).ln();
+        assert!((slope - bed.dry(u, 5.0, 5e-5).exponent).abs() < 1e-8);
+    }
+
+    #[test]
+    fn not_a_number_comes_out_as_none() {
+        let bed = bed();
+        for bad in [f64::NAN, f64::INFINITY] {
+            let dry = DryGradient { gradient_pa_m: bad, exponent: -0.2 };
+            assert_eq!(bed.wet_pa_m(dry, 0.05, RHO_L, None), None);
+        }
+        let dry = bed.dry(0.4, 5.0, 5e-5);
+        assert_eq!(bed.wet_pa_m(dry, f64::NAN, RHO_L, None), None);
+        assert!(bed.wet_pa_m(dry, 0.05, RHO_L, Some(f64::NAN)).is_some(), "a bad guess is only a bad guess");
+    }
+}
