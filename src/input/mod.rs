@@ -10,11 +10,21 @@
 )]
 
 pub mod builtin;
+mod columns;
 pub mod correlation_file;
 pub mod diagnostic;
+mod loads;
+mod lower;
 mod open;
+mod quantity;
+mod raw;
+mod reader;
+mod schema;
+mod unit_expr;
+mod unit_table;
 mod write_back;
 
 pub use diagnostic::{Diagnostic, Diagnostics, Source};
 pub use open::{MAX_FILE_BYTES, Opened, decode, open};
+pub use schema::{bid_schema, case_schema};
 pub use write_back::{Found, WriteBackError, write_back};
