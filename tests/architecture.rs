@@ -71,7 +71,20 @@ fn reached(code: &str) -> BTreeSet<String> {
 /// The allowed edges: a layer, and what it may import beside itself.
 const ALLOWED: &[(&str, &[&str])] = &[
     ("", &["cli", "engine/*", "input", "report"]),
-    ("cli", &["input", "report", "engine/case", "engine/correlation", "engine/design", "engine/error", "engine/findings", "engine/result", "engine/units"]),
+    (
+        "cli",
+        &[
+            "input",
+            "report",
+            "engine/case",
+            "engine/correlation",
+            "engine/design",
+            "engine/error",
+            "engine/findings",
+            "engine/result",
+            "engine/units",
+        ],
+    ),
     ("report", &["engine/case", "engine/findings", "engine/result", "engine/units"]),
     ("input", &["engine/case", "engine/correlation", "engine/error", "engine/units"]),
     ("engine/mod", &[]),
@@ -83,7 +96,10 @@ const ALLOWED: &[(&str, &[&str])] = &[
     ("engine/solve", &["engine/error"]),
     ("engine/geometry", &["engine/case", "engine/error", "engine/units"]),
     ("engine/correlation", &["engine/error", "engine/units"]),
-    ("engine/hydraulics", &["engine/case", "engine/correlation", "engine/error", "engine/geometry", "engine/solve", "engine/units"]),
+    (
+        "engine/hydraulics",
+        &["engine/case", "engine/correlation", "engine/error", "engine/geometry", "engine/solve", "engine/units"],
+    ),
     (
         "engine/design",
         &[
@@ -152,8 +168,11 @@ fn quantities_come_from_one_file() {
 
 #[test]
 fn engine_and_input_touch_no_file_clock_or_screen() {
-    let forbidden = ["std::fs", "std::env", "std::time", "std::process", "println!", "eprintln!", "print!(", "dbg!(", "std::io"];
-    for (name, code) in sources().into_iter().filter(|(name, _)| name.starts_with("engine/") || name.starts_with("input/")) {
+    let forbidden =
+        ["std::fs", "std::env", "std::time", "std::process", "println!", "eprintln!", "print!(", "dbg!(", "std::io"];
+    for (name, code) in
+        sources().into_iter().filter(|(name, _)| name.starts_with("engine/") || name.starts_with("input/"))
+    {
         for word in forbidden {
             assert!(!code.contains(word), "{name} contains {word}");
         }
@@ -172,7 +191,10 @@ fn only_cli_opens_files() {
 #[test]
 fn no_lint_is_allowed_without_being_expected() {
     for (name, code) in sources() {
-        assert!(!code.contains("#[allow(") && !code.contains("#![allow("), "{name} allows a lint; expect it with a reason");
+        assert!(
+            !code.contains("#[allow(") && !code.contains("#![allow("),
+            "{name} allows a lint; expect it with a reason"
+        );
     }
 }
 
@@ -187,7 +209,8 @@ fn no_source_file_is_longer_than_the_ceiling() {
 
 #[test]
 fn top_level_holds_exactly_what_the_layout_names() {
-    let allowed = ["Cargo.toml", "Cargo.lock", "README.md", "DEVELOPERS.md", "src", "correlations", "tests", "cases", "target"];
+    let allowed =
+        ["Cargo.toml", "Cargo.lock", "README.md", "DEVELOPERS.md", "src", "correlations", "tests", "cases", "target"];
     for entry in std::fs::read_dir(root()).unwrap() {
         let name = entry.unwrap().file_name().to_string_lossy().into_owned();
         assert!(name.starts_with('.') || allowed.contains(&name.as_str()), "{name} has no place at the top level");

@@ -49,7 +49,7 @@ pub struct Table {
 pub struct Report {
     /// The sentence that answers.
     pub head: String,
-    /// The verdict the sentence ends with.
+    /// The verdict of the sentence.
     pub verdict: Status,
     /// Case, revision, basis.
     pub about: String,

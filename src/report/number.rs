@@ -72,8 +72,9 @@ impl Display {
         }
     }
 
-    /// A pressure drop.
+    /// A pressure drop; a difference below a millionth of a pascal is rounding and shows as none.
     pub fn pressure(self, pressure: Pressure) -> String {
+        let pressure = if pressure.si().abs() < 1e-6 { Pressure::from_si(0.0) } else { pressure };
         match self {
             Self::Si => with(pressure.si() / 100.0, 4, "mbar"),
             Self::Us => with(pressure.si() / PSI_PA, 4, "psi"),
@@ -148,9 +149,9 @@ mod tests {
     #[test]
     fn significant_digits_keep_their_number_over_the_range_of_the_trade() {
         for (value, digits, text) in [
-            (3.14159, 3, "3.14"),
-            (0.00031415, 3, "0.000314"),
-            (31415.9, 3, "31416"),
+            (2.71928, 3, "2.72"),
+            (0.00027192, 3, "0.000272"),
+            (27192.8, 3, "27193"),
             (-0.05, 2, "-0.050"),
             (0.0, 3, "0"),
             (1.5e-9, 3, "1.50e-9"),

@@ -16,7 +16,7 @@ fn or_dash(text: Option<String>) -> String {
     text.unwrap_or_else(|| "-".to_owned())
 }
 
-/// Diameter and what governs it, wall position, share required and actual; the verdict follows it.
+/// The sentence that answers: verdict, diameter and what governs it, wall position, share required and actual.
 pub fn head(case: &Case, answer: &Answer, display: Display) -> String {
     let shell = &answer.shell;
     let governed = &shell.governed_by;
@@ -31,13 +31,13 @@ pub fn head(case: &Case, answer: &Answer, display: Display) -> String {
         )
     };
     let stands = if shell.sized.contains(&true) { "shell" } else { "given shell" };
+    let verdict = answer.verdict.name();
     let walls: Vec<String> = answer.walls.iter().map(|w| display.small_length(w.position, true)).collect();
     let mut head = format!(
-        "{}: {stands} {diameter} ({} of \"{}\" at \"{}\"), wall at {}",
+        "{}, {verdict}: {stands} {diameter} by {} of \"{}\", wall at {}",
         inert(&case.tag),
         governed.criterion,
         inert(&governed.section),
-        inert(&governed.point),
         walls.join(" and ")
     );
     if let Some(first) = answer.compartments.first() {

@@ -12,10 +12,10 @@ const LEAST_WORDS: usize = 10;
 /// The report as text; `colour` paints the verdict and each finding's status, never a table.
 pub fn render(report: &Report, colour: bool) -> String {
     let mut out = String::new();
-    // The verdict closes the first sentence; painted only where a terminal shows it.
-    let head = paragraph(&format!("{}: {}", report.head, report.verdict.name()), "  ");
-    out += &match head.rfind(report.verdict.name()) {
-        Some(at) if colour => format!("{}{}", &head[..at], paint(report.verdict)),
+    let head = paragraph(&report.head, "  ");
+    let verdict = format!(", {}:", report.verdict.name());
+    out += &match head.split_once(&verdict) {
+        Some((tag, rest)) if colour => format!("{tag}, {}:{rest}", paint(report.verdict)),
         _ => head,
     };
     out.push('\n');

@@ -22,7 +22,9 @@ fn packed(catalogue: &Catalogue, rows: usize) -> Case {
     let packing = catalogue.packing("sheet 250/45").unwrap().clone();
     let sheet = Internals { name: "sheet".into(), kind: InternalsKind::Packing(packing) };
     let half = rows / 2;
-    let bed = |v: f64, l: f64| -> Vec<Row> { (0..half).map(|i| row(v + 0.01 * i as f64, l, 2.6 + 0.005 * i as f64, 735.0)).collect() };
+    let bed = |v: f64, l: f64| -> Vec<Row> {
+        (0..half).map(|i| row(v + 0.01 * i as f64, l, 2.6 + 0.005 * i as f64, 735.0)).collect()
+    };
     case(
         vec![sheet],
         &["feed", "draw"],
@@ -59,19 +61,25 @@ fn correlations(c: &mut Criterion, catalogue: &Catalogue) {
 
 fn main() {
     let catalogue = builtin::catalogue().unwrap();
-    let mut c = Criterion::default().measurement_time(Duration::from_secs(2)).warm_up_time(Duration::from_millis(500)).configure_from_args();
+    let mut c = Criterion::default()
+        .measurement_time(Duration::from_secs(2))
+        .warm_up_time(Duration::from_millis(500))
+        .configure_from_args();
     correlations(&mut c, &catalogue);
 
     let sixty = packed(&catalogue, 60);
     let probe = Probe::new(&sixty, &catalogue).unwrap();
     c.bench_function("rows: bare friction calls of 60 rows", |b| b.iter(|| probe.bare_rows(0, black_box(1.01))));
-    c.bench_function("compartment: pressure drop of 30 rows", |b| b.iter(|| probe.pressure_drop(0, 0, black_box(1.01))));
+    c.bench_function("compartment: pressure drop of 30 rows", |b| {
+        b.iter(|| probe.pressure_drop(0, 0, black_box(1.01)))
+    });
     c.bench_function("balance: 60 rows", |b| b.iter(|| probe.balances(black_box(0))));
     let mut group = c.benchmark_group("balance against rows");
     for rows in [30, 60, 120, 240, 480] {
         let case = packed(&catalogue, rows);
         let probe = Probe::new(&case, &catalogue).unwrap();
-        group.bench_with_input(BenchmarkId::from_parameter(rows), &rows, |b, _| b.iter(|| probe.balances(black_box(0))));
+        group
+            .bench_with_input(BenchmarkId::from_parameter(rows), &rows, |b, _| b.iter(|| probe.balances(black_box(0))));
     }
     group.finish();
     for name in ["ketone", "alcohol", "hydrocarbon"] {

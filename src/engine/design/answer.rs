@@ -1,33 +1,23 @@
 //! The whole way from a checked case to an answer.
 
 use super::arrangement::Arrangement;
-use super::column::end_drop_pa;
+use super::basis::{from_memory, limits, notes, records};
+use super::figures::sections;
 use super::judge::Bench;
-use super::limits::Limit;
-use super::model::{CompiledSection, Model};
+use super::model::Model;
 use super::place_wall::{Positions, equal_drop, positions};
-use super::rate::rate;
 use super::remedy::remedies;
-use super::size::{Margin, PARTS, Part, Sized, required_area_m2, size};
-use super::state::{PointState, absent_because, no_answer_at, share_per_m};
-use super::zone::Beyond;
-use crate::engine::case::{Case, Diameter, Place, Position, Reach};
+use super::size::{Margin, PARTS, Part, Sized, size};
+use super::state::{PointState, absent_because, share_per_m};
+use crate::engine::case::{Case, Diameter, Position};
 use crate::engine::correlation::catalogue::Catalogue;
-use crate::engine::correlation::form::Form;
-use crate::engine::error::{EngineError, EngineResult, finite};
-use crate::engine::findings::{Criterion, Finding, LimitUsed, Status};
-use crate::engine::geometry::{Disc, TrayLayout};
-use crate::engine::hydraulics::load::StageLoad;
-use crate::engine::hydraulics::packing::first_of;
-use crate::engine::hydraulics::section::{Hydraulics, SectionGeometry};
-use crate::engine::hydraulics::tray::SieveTray;
+use crate::engine::error::{EngineResult, finite};
+use crate::engine::findings::{Criterion, Finding, Status};
+use crate::engine::geometry::Disc;
 use crate::engine::result::{
-    Answer, BalanceResult, CompartmentResult, GovernedBy, SectionResult, ShellResult, Solution, StageResult,
-    TrayResult, WallResult,
+    Answer, BalanceResult, CompartmentResult, GovernedBy, Remedy, ShellResult, Solution, WallResult,
 };
-use crate::engine::units::{
-    Area, FFactor, Length, MassRate, Pressure, PressureGradient, Si, Time, Velocity, VolumeRate, WeirLoad,
-};
+use crate::engine::units::{Area, Length, Pressure, Si};
 
 /// The design point, at which the figures of an answer stand.
 const DESIGN: usize = 0;
@@ -74,12 +64,23 @@ pub fn work(case: &Case, catalogue: &Catalogue) -> EngineResult<Answer> {
     Ok(answer)
 }
 
+/// A remedy in a few words; its re-rating stands with the remedies.
+fn in_short(remedy: &Remedy) -> String {
+    match (&remedy.compartment, remedy.pressure, remedy.factor, remedy.position) {
+        (Some(compartment), Some(pressure), Some(factor), _) => {
+            format!("{:+.2} mbar on \"{compartment}\" (friction x {factor:.3})", pressure.si() / 100.0)
+        }
+        (_, _, _, Some(position)) => format!("wall to {:+.1} mm", position.si() * 1e3),
+        _ => remedy.what.clone(),
+    }
+}
+
 /// Says at each missed share what would bring it back.
-fn with_remedies(mut findings: Vec<Finding>, remedies: &[crate::engine::result::Remedy]) -> Vec<Finding> {
+fn with_remedies(mut findings: Vec<Finding>, remedies: &[Remedy]) -> Vec<Finding> {
     if remedies.is_empty() {
         return findings;
     }
-    let ways: Vec<&str> = remedies.iter().map(|r| r.what.as_str()).collect();
+    let ways: Vec<String> = remedies.iter().map(in_short).collect();
     for finding in &mut findings {
         if finding.status != Status::Met
             && matches!(finding.criterion, Criterion::VapourShareWithin | Criterion::Balance)
@@ -262,270 +263,6 @@ fn balance(model: &Model<'_>, design: &PointState) -> BalanceResult {
         least_imbalance: if all.is_empty() { design.balances.least_imbalance_pa.map(Pressure::from_si) } else { None },
         absent_because: absent_because(model),
     }
-}
-
-fn sections(bench: &Bench<'_, '_>) -> EngineResult<Vec<SectionResult>> {
-    let mut out: Vec<(usize, SectionResult)> = Vec::new();
-    for (stack, (geometry, _)) in bench.model.stacks().zip(bench.arrangement.stacks()) {
-        let bottom = match stack.place {
-            Place::Compartment(side) => bench.states.first().and_then(|s| s.actual_factor(bench.model, DESIGN, side)),
-            // Above and below the wall nothing depends on the shares.
-            _ => bench.states.first().and_then(|s| s.actual.as_ref()).map(|_| 1.0),
-        };
-        for (section, geometry) in stack.sections.iter().zip(geometry) {
-            let actual = bottom.map(|bottom| section.factor(DESIGN, bottom));
-            let result = section_result(
-                bench.model,
-                section,
-                geometry,
-                stack.place,
-                required_area_m2(stack, |i| i == section.index),
-                actual,
-            )?;
-            out.push((section.index, result));
-        }
-    }
-    out.sort_by_key(|(index, _)| *index);
-    Ok(out.into_iter().map(|(_, result)| result).collect())
-}
-
-fn section_result(
-    model: &Model<'_>,
-    section: &CompiledSection<'_>,
-    geometry: &SectionGeometry,
-    place: Place,
-    required_area_m2: f64,
-    actual: Option<f64>,
-) -> EngineResult<SectionResult> {
-    let rated = |factor: f64| {
-        rate(section, geometry, DESIGN, factor).map_err(|beyond| {
-            no_answer_at(model, DESIGN, Beyond { section: section.index, row: beyond.row }, geometry.area_m2, factor)
-        })
-    };
-    let required = rated(1.0)?;
-    let at_actual = actual.map(rated).transpose()?;
-    let loads = section.loads_at(DESIGN);
-    let flood = required.flood();
-    let row = flood.and_then(|f| f.row).unwrap_or(0);
-    let load = loads.get(row).copied().ok_or_else(|| EngineError::Search {
-        what: format!("rows of section \"{}\"", section.section.name),
-        why: "the design point has none".to_owned(),
-    })?;
-    let rows = model.case.points.first().and_then(|p| p.loads.get(section.index));
-    let stage = |row: usize| rows.and_then(|rows| rows.get(row)).map_or_else(String::new, |r| r.stage.clone());
-    let mut outside = (Vec::new(), Vec::new());
-    for load in loads {
-        section.model.outside(geometry, load, &mut outside.0, &mut outside.1);
-    }
-    let (f_factor, capacity_factor, liquid_load) = on_place(&load, geometry.area_m2);
-    Ok(SectionResult {
-        name: section.section.name.clone(),
-        place: model.place_name(place).to_owned(),
-        internals: model.case.internals.get(section.section.internals).map_or_else(String::new, |i| i.name.clone()),
-        flood_method: section.model.flood_method().to_owned(),
-        pressure_drop_method: section.model.drop_method().map(str::to_owned),
-        area: Area::from_si(geometry.area_m2),
-        required_area: Area::from_si(required_area_m2),
-        flood: flood.map_or(f64::NAN, |f| f.si),
-        flood_actual: at_actual.as_ref().and_then(|r| r.flood().map(|f| f.si)),
-        f_factor,
-        capacity_factor,
-        flow_parameter: load.flow_parameter(),
-        liquid_load,
-        friction: required.friction_pa.map(Pressure::from_si),
-        friction_actual: at_actual.and_then(|r| r.friction_pa).map(Pressure::from_si),
-        static_head: Pressure::from_si(section.static_pa(DESIGN)),
-        governing_stage: stage(row),
-        in_range: outside.0.is_empty() && outside.1.is_empty(),
-        tray: section
-            .model
-            .tray()
-            .zip(geometry.layout.as_ref())
-            .map(|(tray, layout)| tray_result(tray, layout, loads, geometry.area_m2)),
-        stages: loads.iter().enumerate().map(|(row, load)| stage_result(section, geometry, load, stage(row))).collect(),
-    })
-}
-
-/// F-factor, capacity factor and liquid load on the area of the place.
-fn on_place(load: &StageLoad, area_m2: f64) -> (FFactor, Velocity, Velocity) {
-    let velocity_m_s = load.vapour_m3_s() / area_m2;
-    (
-        FFactor::from_root_pascal(velocity_m_s * load.rho_v_kg_m3.sqrt()),
-        Velocity::from_si(velocity_m_s * load.capacity_group()),
-        Velocity::from_si(load.liquid_m3_s() / area_m2),
-    )
-}
-
-fn stage_result(
-    section: &CompiledSection<'_>,
-    geometry: &SectionGeometry,
-    load: &StageLoad,
-    stage: String,
-) -> StageResult {
-    let (f_factor, capacity_factor, liquid_load) = on_place(load, geometry.area_m2);
-    let gradient =
-        if section.model.has_friction() { section.model.friction_gradient_pa_m(geometry, load) } else { None };
-    StageResult {
-        stage,
-        vapour_flow: MassRate::from_si(load.vapour_kg_s),
-        liquid_flow: MassRate::from_si(load.liquid_kg_s),
-        vapour_volume_flow: VolumeRate::from_si(load.vapour_m3_s()),
-        flood: section.model.flooding_area_m2(load) / geometry.area_m2,
-        f_factor,
-        capacity_factor,
-        flow_parameter: load.flow_parameter(),
-        liquid_load,
-        friction_gradient: gradient.map(PressureGradient::from_si),
-    }
-}
-
-fn tray_result(tray: &SieveTray, layout: &TrayLayout, loads: &[StageLoad], area_m2: f64) -> TrayResult {
-    let least =
-        |pick: fn(&crate::engine::geometry::Deck) -> f64| layout.decks().iter().map(pick).fold(f64::INFINITY, f64::min);
-    let all: Vec<_> = loads.iter().map(|load| (load, tray.figures(layout, load))).collect();
-    let greatest = |pick: &dyn Fn(&StageLoad, &crate::engine::hydraulics::tray::TrayFigures) -> f64| {
-        all.iter().map(|(load, figures)| pick(load, figures)).fold(0.0, f64::max)
-    };
-    let smallest = |pick: &dyn Fn(&crate::engine::hydraulics::tray::TrayFigures) -> f64| {
-        all.iter().map(|(_, figures)| pick(figures)).fold(f64::INFINITY, f64::min)
-    };
-    let worst_drop = all.iter().max_by(|a, b| a.1.drop_pa.total_cmp(&b.1.drop_pa));
-    TrayResult {
-        net_area: Area::from_si(least(|d| d.net_area.si())),
-        active_area: Area::from_si(least(|d| d.active_area.si())),
-        hole_area: Area::from_si(least(|d| d.hole_area.si())),
-        downcomer_area: Area::from_si(least(|d| d.downcomer_area.si())),
-        weir_length: Length::from_si(least(|d| {
-            d.passes().iter().map(|p| p.weir.length().si()).fold(f64::INFINITY, f64::min)
-        })),
-        flow_path: Length::from_si(shortest_path_m(layout)),
-        pressure_drop_per_tray: Pressure::from_si(greatest(&|_, f| f.drop_pa)),
-        dry_head: Length::from_si(greatest(&|_, f| f.dry_head_m)),
-        liquid_head: Length::from_si(worst_drop.map_or(0.0, |(_, f)| f.liquid_head_m)),
-        entrainment: greatest(&|load, _| tray.entrainment(load, tray.flooding_area_m2(load) / area_m2)),
-        system_limit: greatest(&|load, _| tray.system_limit_area_m2(load) / area_m2),
-        downcomer_froth: greatest(&|_, f| f.froth),
-        downcomer_velocity: Velocity::from_si(greatest(&|_, f| f.downcomer_velocity_m_s)),
-        downcomer_residence: Time::from_si(smallest(&|f| f.downcomer_residence_s)),
-        apron_velocity: Velocity::from_si(greatest(&|_, f| f.apron_velocity_m_s)),
-        weir_load: WeirLoad::from_si(greatest(&|_, f| f.weir_load_m2_s)),
-        weep: greatest(&|_, f| f.weep),
-        hole_velocity_over_weep_onset: smallest(&|f| f.hole_velocity_over_onset),
-    }
-}
-
-/// Shortest flow path of all decks and passes, m.
-pub(crate) fn shortest_path_m(layout: &TrayLayout) -> f64 {
-    let paths = layout.decks().iter().flat_map(|deck| deck.passes().iter().map(|pass| pass.flow_path.si()));
-    paths.fold(f64::INFINITY, f64::min)
-}
-
-/// Ids of the records that the answer rests on, sorted.
-fn records(model: &Model<'_>) -> EngineResult<Vec<String>> {
-    let mut out: Vec<String> = Vec::new();
-    for section in model.stacks().flat_map(|stack| &stack.sections) {
-        match &section.model.hydraulics {
-            Hydraulics::Tray(tray) => out.extend(tray.methods.records.iter().cloned()),
-            Hydraulics::Packing(bed) => {
-                out.extend(bed.records.iter().cloned());
-                out.push(first_of(model.catalogue, Form::WettingMinimum)?.id.clone());
-            }
-            Hydraulics::Declared(_) => {}
-        }
-    }
-    out.sort();
-    out.dedup();
-    Ok(out)
-}
-
-/// Constants from memory on which the verdict rests.
-fn from_memory(model: &Model<'_>, records: &[String], findings: &[Finding]) -> Vec<String> {
-    let mut out = Vec::new();
-    for record in records.iter().filter_map(|id| model.catalogue.record(id).ok()) {
-        let constants = record.from_memory();
-        if !constants.is_empty() {
-            out.push(format!("{}: {}", record.id, constants.join(", ")));
-        }
-    }
-    for section in model.stacks().flat_map(|stack| &stack.sections) {
-        if let (Hydraulics::Packing(bed), Some(internals)) =
-            (&section.model.hydraulics, model.case.internals.get(section.section.internals))
-            && let crate::engine::case::InternalsKind::Packing(packing) = &internals.kind
-        {
-            let used: Vec<&str> =
-                packing.from_memory.iter().map(String::as_str).filter(|key| bed.constants.contains(key)).collect();
-            if !used.is_empty() {
-                out.push(format!(
-                    "packing \"{}\": {}",
-                    packing.entry.as_deref().unwrap_or(&internals.name),
-                    used.join(", ")
-                ));
-            }
-        }
-    }
-    for finding in findings.iter().filter(|f| f.because.contains("(from memory)")) {
-        out.push(format!("default limit of {}", finding.criterion.name()));
-    }
-    out.sort();
-    out.dedup();
-    out
-}
-
-/// Every limit in use, each once for the sections and points that share it.
-fn limits(model: &Model<'_>) -> Vec<LimitUsed> {
-    let mut out: Vec<(LimitUsed, Vec<String>)> = Vec::new();
-    let mut add = |limit: &Limit, scope: String| {
-        let used = LimitUsed {
-            criterion: limit.criterion,
-            scope: String::new(),
-            limit: limit.amount(),
-            origin: limit.origin.clone(),
-        };
-        match out.iter_mut().find(|(known, _)| *known == used) {
-            Some((_, scopes)) if !scopes.contains(&scope) => scopes.push(scope),
-            Some(_) => {}
-            None => out.push((used, vec![scope])),
-        }
-    };
-    for section in model.stacks().flat_map(|stack| &stack.sections) {
-        for limits in &section.limits {
-            for limit in limits.all(section.tray.is_some()) {
-                add(limit, section.section.name.clone());
-            }
-        }
-    }
-    for limits in &model.column_limits {
-        for limit in limits.all() {
-            add(limit, "column".to_owned());
-        }
-    }
-    let mut list: Vec<LimitUsed> =
-        out.into_iter().map(|(used, scopes)| LimitUsed { scope: scopes.join(", "), ..used }).collect();
-    list.sort_by(|a, b| a.criterion.cmp(&b.criterion));
-    list
-}
-
-fn notes(model: &Model<'_>, arrangement: &Arrangement) -> Vec<String> {
-    let mut out = model.case.reading_notes.clone();
-    for (side, compartment) in model.sides.iter().zip(&model.case.compartments) {
-        if side.filled_m > 0.0 {
-            out.push(format!(
-                "\"{}\" is {:.3} m shorter than the highest compartment; filled up with empty height at the density of its bottom row",
-                compartment.name, side.filled_m
-            ));
-        }
-    }
-    if model.case.wall.reach != Reach::Middle
-        && let Some(because) = absent_because(model)
-    {
-        out.push(because);
-    }
-    if end_drop_pa(&model.above, &arrangement.above, DESIGN).is_none()
-        || end_drop_pa(&model.below, &arrangement.below, DESIGN).is_none()
-    {
-        out.push("the column's pressure drop is not worked out: some internals have no declared resistance".to_owned());
-    }
-    out
 }
 
 /// Nothing leaves the engine that is not a number.

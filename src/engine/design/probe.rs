@@ -45,10 +45,11 @@ impl<'a> Probe<'a> {
     /// All balances at a point, and how often both sides' drops were worked out for them.
     pub fn balances(&self, point: usize) -> (Vec<Solution>, usize) {
         let found = all_balances(&Zone::new(&self.model, &self.arrangement.zone, point));
-        let solutions = found
-            .all
-            .into_iter()
-            .map(|b| Solution { shares: b.shares, pressure_drop: Pressure::from_si(b.pressure_pa), stable: b.stable });
+        let solutions = found.all.into_iter().map(|b| Solution {
+            shares: b.shares,
+            pressure_drop: Pressure::from_si(b.pressure_pa),
+            stable: b.stable,
+        });
         (solutions.collect(), found.evaluations)
     }
 

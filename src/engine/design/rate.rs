@@ -1,6 +1,6 @@
 //! Rating of one section at one point and one factor on its vapour: every row, every criterion, the worst row of each.
 
-use super::answer::shortest_path_m;
+use super::figures::shortest_path_m;
 use super::limits::{Limit, SectionLimits};
 use super::model::CompiledSection;
 use crate::engine::findings::Criterion;

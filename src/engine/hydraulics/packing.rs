@@ -57,7 +57,7 @@ struct OlderFlood {
 enum BedDrop {
     Stichlmair(StichlmairBed),
     Later { chart: GpdLater, factor_per_m: f64 },
-    Older { chart: GpdOlder, factor_per_m: f64 },
+    Older { chart: Box<GpdOlder>, factor_per_m: f64 },
 }
 
 impl PackedBed {
@@ -283,7 +283,7 @@ fn drop_of(
                 .factor_older
                 .map(|factor| {
                     constants.push("packing_factor_older");
-                    let chart = GpdOlder::from_record(record).map_err(failed)?;
+                    let chart = Box::new(GpdOlder::from_record(record).map_err(failed)?);
                     Ok(BedDrop::Older { chart, factor_per_m: factor.si() })
                 })
                 .transpose()?,
