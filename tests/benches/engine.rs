@@ -2,7 +2,7 @@
 //!
 //! `cargo bench --bench engine` prints criterion's times, then the two ratios that are goals: a balance over the bare
 //! correlation calls it needs, and the growth of a balance with its rows.
-#![allow(missing_docs)]
+#![expect(clippy::print_stdout, clippy::disallowed_types, reason = "a bench times and prints")]
 
 #[path = "../common/mod.rs"]
 mod common;
