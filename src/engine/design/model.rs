@@ -1,7 +1,7 @@
 //! The compiled case: loads as flat arrays in SI, grouped by place, with everything that does not depend on the shell.
 
 use super::limits::{ColumnLimits, SectionLimits};
-use crate::engine::case::{Case, Device, DeviceLoss, End, InternalsKind, Place, Section, Tray};
+use crate::engine::case::{Case, Device, DeviceLoss, End, InternalsKind, Place, Reach, Section, Tray};
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::error::{EngineError, EngineResult, finite};
 use crate::engine::hydraulics::load::StageLoad;
@@ -143,10 +143,13 @@ impl<'a> Stack<'a> {
         for (index, section) in case.sections.iter().enumerate().filter(|(_, s)| s.place == place) {
             sections.push(CompiledSection::new(case, catalogue, index, section)?);
         }
-        if sections.is_empty() {
+        let closed = matches!((place, case.wall.reach), (Place::Above, Reach::Top) | (Place::Below, Reach::Bottom));
+        if sections.is_empty() && !closed {
             return Err(EngineError::Search {
                 what: "sections of a place".to_owned(),
-                why: "each place (above the wall, every compartment, below the wall) needs at least one".to_owned(),
+                why: "each place (above the wall, every compartment, below the wall) needs at least one, but for the end at which \
+                      the wall is closed"
+                    .to_owned(),
             });
         }
         set_travel(&mut sections, case.points.len(), matches!(place, Place::Compartment(_)));

@@ -69,7 +69,14 @@ pub(crate) struct Sized {
 
 /// Sizes what the case leaves open.
 pub(crate) fn size(model: &Model<'_>) -> EngineResult<Sized> {
-    let needs = [need(model, Part::Above)?, need(model, Part::WallZone)?, need(model, Part::Below)?];
+    let zone = need(model, Part::WallZone)?;
+    // At a head where the wall is closed there is no section: the shell there is the wall zone's.
+    let of_end = |stack: &Stack<'_>, part: Part| match stack.sections.is_empty() {
+        true => Ok(zone.clone()),
+        false => need(model, part),
+    };
+    let (above, below) = (of_end(&model.above, Part::Above)?, of_end(&model.below, Part::Below)?);
+    let needs = [above, zone, below];
     let [above, zone, below] = &needs;
     let shell = &model.case.shell;
     let mut least_m = [above.diameter_m, zone.diameter_m, below.diameter_m];
@@ -142,18 +149,20 @@ fn flood_diameter_m(model: &Model<'_>, part: Part) -> EngineResult<f64> {
         Part::Below => Ok(end(&model.below)),
         Part::WallZone => {
             let areas_m2: f64 = model.sides.iter().map(|side| required_area_m2(side, |_| true)).sum();
+            let sections_m2: Vec<f64> = model
+                .sides
+                .iter()
+                .flat_map(|side| side.sections.iter().map(|s| required_area_m2(side, |index| index == s.index)))
+                .collect();
             // The walls' own area makes the shell larger than this.
             let start_m = (4.0 / PI * areas_m2).sqrt();
             let worst = |diameter_m: f64| -> EngineResult<f64> {
-                let zone = ZoneGeometry::new(model, diameter_m, standing(model, diameter_m)?)?;
-                let mut greatest = f64::NEG_INFINITY;
-                for (side, geometry) in model.sides.iter().zip(&zone.sides) {
-                    for (section, geometry) in side.sections.iter().zip(&geometry.sections) {
-                        let area_m2 = required_area_m2(side, |index| index == section.index);
-                        greatest = greatest.max((area_m2 / geometry.area_m2).ln());
-                    }
-                }
-                Ok(greatest)
+                // A shell too small for a given wall is as bad as one that floods.
+                let Ok(positions) = standing(model, diameter_m) else { return Ok(HOPELESS) };
+                let Ok(zone) = ZoneGeometry::new(model, diameter_m, positions) else { return Ok(HOPELESS) };
+                let stands = zone.sides.iter().flat_map(|side| &side.sections);
+                let ratios = sections_m2.iter().zip(stands).map(|(need, geometry)| (need / geometry.area_m2).ln());
+                Ok(ratios.fold(f64::NEG_INFINITY, f64::max))
             };
             least_diameter_m(start_m, worst)
         }
