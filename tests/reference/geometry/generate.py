@@ -1,7 +1,7 @@
 """Reference values of a disc cut by straight lines, to 80 digits.
 
-Run in this folder: python3 generate.py (needs mpmath, any version from 1.3). Rewrites the .csv files beside it; the same
-script gives the same bytes.
+Run: python3 generate.py (needs mpmath, any version from 1.3) rewrites the .csv files beside it; with --check it compares them
+with what it gives. The same script gives the same bytes.
 
 Method: the plain antiderivative of the half chord, G(x) = (x sqrt(r^2 - x^2) + r^2 asin(x/r))/2, and polynomials, with no
 rearrangement against cancellation: 80 digits carry it. A spread of rows is integrated numerically as well (check_by_quadrature).
@@ -10,7 +10,10 @@ of an inverse are doubles near the wanted share, so that no rounding of an input
 """
 
 import csv
+import io
 import itertools
+import pathlib
+import sys
 
 from mpmath import mp, mpf, sqrt, asin, acos, quad, nstr
 
@@ -97,11 +100,18 @@ def check(value, by_quadrature, what):
 
 
 def write(name, header, rows):
-    with open(name, "w", newline="", encoding="utf-8") as file:
-        out = csv.writer(file, lineterminator="\n")
-        out.writerow(header)
-        for row in rows:
-            out.writerow([text(x) for x in row])
+    """Writes a file, or with --check compares it with the one that is there."""
+    memory = io.StringIO(newline="")
+    out = csv.writer(memory, lineterminator="\n")
+    out.writerow(header)
+    for row in rows:
+        out.writerow([text(x) for x in row])
+    path = pathlib.Path(__file__).parent / name
+    if "--check" in sys.argv:
+        if path.read_text(encoding="utf-8") != memory.getvalue():
+            raise SystemExit(f"{name} differs from what this script gives")
+    else:
+        path.write_text(memory.getvalue(), encoding="utf-8", newline="")
     print(name, len(rows))
 
 
