@@ -94,3 +94,146 @@ fn every_message_marks_something_and_says_what_would_be_right_or_why() {
         }
     }
 }
+
+/// A small generator of known sequence (xorshift64*), so that a failure can be run again.
+struct Dice(u64);
+
+impl Dice {
+    fn next(&mut self) -> u64 {
+        self.0 ^= self.0 >> 12;
+        self.0 ^= self.0 << 25;
+        self.0 ^= self.0 >> 27;
+        self.0.wrapping_mul(0x2545_F491_4F6C_DD1D) >> 11
+    }
+    fn below(&mut self, limit: usize) -> usize {
+        (self.next() % limit.max(1) as u64) as usize
+    }
+    fn pick<'a>(&mut self, from: &[&'a str]) -> &'a str {
+        from[self.below(from.len())]
+    }
+}
+
+const WEIRD: [&str; 24] = [
+    "0",
+    "-1",
+    "1e308",
+    "1e-308",
+    "-0.0",
+    "nan",
+    "inf",
+    "-inf",
+    "1e999",
+    "99999999999999999999",
+    "\"\"",
+    "\"-3 m\"",
+    "\"NaN m\"",
+    "\"1e12 m\"",
+    "\"5 kg/m3\"",
+    "\"0 t/h\"",
+    "[]",
+    "{}",
+    "true",
+    "1979-05-27",
+    "0x7fffffffffffffff",
+    "1e12",
+    "\"\\u0000 m\"",
+    "\"1e-12 Pa\"",
+];
+
+/// One to three changes to a text: a byte, a line, a number, the end.
+fn mutated(text: &str, dice: &mut Dice) -> String {
+    let mut text = text.to_owned();
+    for _ in 0..=dice.below(3) {
+        let mut lines: Vec<String> = text.split('\n').map(str::to_owned).collect();
+        let line = dice.below(lines.len());
+        match dice.below(8) {
+            0 => {
+                let mut bytes = text.into_bytes();
+                if !bytes.is_empty() {
+                    let at = dice.below(bytes.len());
+                    bytes[at] ^= 1 << dice.below(8);
+                }
+                text = String::from_utf8_lossy(&bytes).into_owned();
+                continue;
+            }
+            1 => drop(lines.remove(line)),
+            2 => lines.insert(line, lines[line].clone()),
+            3 => {
+                let other = dice.below(lines.len());
+                lines.swap(line, other);
+            }
+            4 | 5 => {
+                // A value of the case, or a field of the table.
+                if let Some((key, _)) = lines[line].split_once(" = ") {
+                    lines[line] = format!("{key} = {}", dice.pick(&WEIRD));
+                } else {
+                    let separator = if lines[line].contains(';') { ";" } else { "," };
+                    let mut fields: Vec<&str> = lines[line].split(separator).collect();
+                    let field = dice.below(fields.len());
+                    fields[field] = dice.pick(&WEIRD).trim_matches('"');
+                    lines[line] = fields.join(separator);
+                }
+            }
+            6 => {
+                let from = dice.below(lines[line].chars().count() + 1);
+                let kept: String = lines[line].chars().take(from).collect();
+                lines[line] =
+                    kept + dice.pick(&["\u{2212}", "é", "\"", "]", "[[", "\u{0}", "=", "#", ",", ";", "^0.5", "\r"]);
+            }
+            _ => lines.truncate(line),
+        }
+        text = lines.join("\n");
+    }
+    text
+}
+
+/// True if the debug text of a case shows a number that is not finite.
+fn shows_no_finite_number(case: &chordwall::engine::case::Case) -> bool {
+    let text = format!("{case:?}");
+    let mut words = text.split(|c: char| !(c.is_alphanumeric() || c == '-' || c == '_' || c == '"'));
+    words.any(|word| matches!(word, "NaN" | "inf" | "-inf"))
+}
+
+#[test]
+fn no_mutation_panics_or_brings_a_number_that_is_not_finite_into_a_case() {
+    let catalogue = catalogue();
+    let read = |name: &str| {
+        fs::read_to_string(Path::new(env!("CARGO_MANIFEST_DIR")).join("tests").join(name)).expect("the file exists")
+    };
+    let leaving = good("good.toml").replace("\"below stage\"", "\"leaving stage\"");
+    let pairs = [
+        (good("good.toml"), good("good.csv")),
+        (leaving, good("good.csv")),
+        (read("input/contract.toml"), read("input/contract.csv")),
+    ];
+    let mut dice = Dice(0x00C0_FFEE_0000_0001);
+    let (mut passed, mut refused) = (0, 0);
+    for round in 0..6000 {
+        let (case, table) = &pairs[round % pairs.len()];
+        let case = if round % 2 == 0 { mutated(case, &mut dice) } else { case.clone() };
+        let table = if round % 2 == 1 { mutated(table, &mut dice) } else { table.clone() };
+        let outcome = input::open("case.toml", &case).and_then(|opened| {
+            let named = opened.table().is_some();
+            opened.check(named.then_some(&table), &catalogue)
+        });
+        match outcome {
+            Ok(case) => {
+                passed += 1;
+                assert!(!shows_no_finite_number(&case), "round {round}: {case:?}");
+                for row in case.points.iter().flat_map(|point| &point.loads).flatten() {
+                    assert!(row.vapour_density < row.liquid_density, "round {round}");
+                }
+            }
+            Err(diagnostics) => {
+                refused += 1;
+                assert!(!diagnostics.items.is_empty(), "round {round}: refused without a reason");
+                for item in &diagnostics.items {
+                    let source = &diagnostics.sources[item.source];
+                    assert!(source.text.get(item.span.clone()).is_some(), "round {round}: {item:?}");
+                }
+                assert!(!diagnostics.to_plain_text().is_empty());
+            }
+        }
+    }
+    assert!(passed > 100 && refused > 1000, "the mutations are worth something: {passed} passed, {refused} refused");
+}
