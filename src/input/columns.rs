@@ -77,7 +77,9 @@ pub(crate) fn row(stage: String, cells: Cells, sink: &mut Sink) -> Option<Row> {
     if let (Some((vapour, span)), Some((liquid, _))) = (&vapour_density, &liquid_density)
         && vapour >= liquid
     {
-        let message = format!("the vapour ({vapour:.6} kg/m3) is not lighter than its liquid ({liquid:.6} kg/m3)");
+        let shown = |density: &f64| (density * 1e6).round() / 1e6;
+        let message =
+            format!("the vapour ({} kg/m3) is not lighter than its liquid ({} kg/m3)", shown(vapour), shown(liquid));
         let help = "check the two density columns and their units; were they exchanged?";
         sink.help(span.clone(), message, "not lighter than the liquid", help);
         return None;

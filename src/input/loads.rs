@@ -26,6 +26,13 @@ enum Meaning {
     Unknown,
 }
 
+/// What has been said once and is not said again for every row.
+#[derive(Default)]
+struct Told {
+    sections: Vec<String>,
+    decimal_comma: bool,
+}
+
 /// Reads the table. Sections are those of the case, in its order.
 pub(crate) fn read_table(text: &str, sections: &[&str], sink: &mut Sink) -> Vec<LoadRow> {
     if text.len() > MAX_FILE_BYTES {
@@ -40,7 +47,7 @@ pub(crate) fn read_table(text: &str, sections: &[&str], sink: &mut Sink) -> Vec<
     let mut record = csv::StringRecord::new();
     let mut header: Option<Vec<Meaning>> = None;
     let mut rows = Vec::new();
-    let mut unknown: Vec<String> = Vec::new();
+    let mut told = Told::default();
     loop {
         match reader.read_record(&mut record) {
             Ok(true) => {}
@@ -64,7 +71,7 @@ pub(crate) fn read_table(text: &str, sections: &[&str], sink: &mut Sink) -> Vec<
                 header = Some(columns);
             }
             Some(columns) if rows.len() < MAX_ROWS => {
-                rows.extend(read_row(&record, &spans, columns, sections, &mut unknown, sink));
+                rows.extend(read_row(&record, &spans, columns, sections, &mut told, sink));
             }
             Some(_) => {
                 sink.add(whole(&spans), format!("the table has more than {MAX_ROWS} rows"), "one row too many");
@@ -230,7 +237,7 @@ fn read_row(
     spans: &[Span],
     columns: &[Meaning],
     sections: &[&str],
-    unknown: &mut Vec<String>,
+    told: &mut Told,
     sink: &mut Sink,
 ) -> Option<LoadRow> {
     if record.len() != columns.len() {
@@ -246,13 +253,13 @@ fn read_row(
     for ((field, meaning), span) in record.iter().zip(columns).zip(spans) {
         let field = field.trim();
         match meaning {
-            Meaning::Section => section = find_section(field, span, sections, unknown, sink),
+            Meaning::Section => section = find_section(field, span, sections, told, sink),
             Meaning::Point => point = label(field, span, "point", sink),
             Meaning::Stage => stage = label(field, span, "stage", sink).unwrap_or_default(),
             Meaning::Figure(index, Some(unit)) => {
                 if let (Some(column), Some(cell)) = (COLUMNS.get(*index), cells.get_mut(*index)) {
                     let sign = if column.zero { Sign::NotNegative } else { Sign::Positive };
-                    *cell = figure(field, span, column.name, *unit, sign, sink);
+                    *cell = figure(field, span, column.name, *unit, sign, (told, sink));
                 }
             }
             Meaning::Figure(_, None) | Meaning::Unknown => {}
@@ -266,16 +273,12 @@ fn read_row(
     Some(LoadRow { section: section?, point: point?, span: whole(spans), row })
 }
 
-fn find_section(
-    field: &str,
-    span: &Span,
-    sections: &[&str],
-    unknown: &mut Vec<String>,
-    sink: &mut Sink,
-) -> Option<usize> {
+fn find_section(field: &str, span: &Span, sections: &[&str], told: &mut Told, sink: &mut Sink) -> Option<usize> {
     let found = sections.iter().position(|name| *name == field && !field.is_empty());
-    if found.is_none() && !unknown.iter().any(|name| name == field) {
-        unknown.push(field.to_owned());
+    // A section of the case whose own name could not be read may be the one that is meant.
+    let unreadable = sections.iter().any(|name| name.is_empty());
+    if found.is_none() && !unreadable && !told.sections.iter().any(|name| name == field) {
+        told.sections.push(field.to_owned());
         let message = format!("the case has no section \"{field}\"");
         sink.help(span.clone(), message, "unknown section", nearest_help(field, sections, "sections of the case"));
     }
@@ -296,7 +299,14 @@ fn label(field: &str, span: &Span, what: &str, sink: &mut Sink) -> Option<String
 }
 
 /// A number of the table in SI.
-fn figure(field: &str, span: &Span, name: &str, unit: Unit, sign: Sign, sink: &mut Sink) -> Option<(f64, Span)> {
+fn figure(
+    field: &str,
+    span: &Span,
+    name: &str,
+    unit: Unit,
+    sign: Sign,
+    (told, sink): (&mut Told, &mut Sink),
+) -> Option<(f64, Span)> {
     if field.is_empty() {
         sink.help(span.clone(), format!("{name} is empty in this row"), "empty", "every row needs a number here");
         return None;
@@ -306,6 +316,15 @@ fn figure(field: &str, span: &Span, name: &str, unit: Unit, sign: Sign, sink: &m
         Ok(_) => {
             let message = format!("{name} should be a number, but this is \"{field}\"");
             sink.help(span.clone(), message, "not a number alone", "units stand in the header, not in the rows");
+            return None;
+        }
+        Err((_, why)) if field.contains(',') => {
+            if !told.decimal_comma {
+                let help =
+                    "save the table with a point as decimal sign; this is said once, other numbers may have commas too";
+                sink.help(span.clone(), format!("{name}: {why}"), "decimal comma", help);
+            }
+            told.decimal_comma = true;
             return None;
         }
         Err((_, why)) => {

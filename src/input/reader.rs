@@ -323,8 +323,10 @@ pub(crate) fn read_table<T: FromTable>(item: &Item<'_, '_>, sink: &mut Sink) -> 
     }
 }
 
-/// Says which keys of a table are unknown, each with the nearest known one.
-pub(crate) fn report_unknown(table: &DeTable<'_>, title: &str, keys: &[&str], sink: &mut Sink) {
+/// Says which keys of a table are unknown, each with the nearest known one; gives back the known keys that were meant, so
+/// that a slip of the pen is not also called a missing key.
+pub(crate) fn report_unknown(table: &DeTable<'_>, title: &str, keys: &[&str], sink: &mut Sink) -> Vec<(String, Span)> {
+    let mut meant = Vec::new();
     for (key, _) in table.iter() {
         let typed = key.get_ref().as_ref();
         if keys.contains(&typed) {
@@ -332,17 +334,36 @@ pub(crate) fn report_unknown(table: &DeTable<'_>, title: &str, keys: &[&str], si
         }
         let message = format!("unknown key \"{typed}\" in {title}");
         sink.help(key.span(), message, "unknown key", nearest_help(typed, keys, "keys here"));
+        if let Some(near) = nearest(typed, keys).filter(|near| !table.iter().any(|(key, _)| key.get_ref() == near)) {
+            meant.push((near.to_owned(), key.span()));
+        }
+    }
+    meant
+}
+
+/// "did you mean ..." if something is near, and the list of what there is (of a long list, what is nearest).
+pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
+    let mut words: Vec<&str> = Vec::new();
+    for word in known.iter().filter(|word| !word.is_empty()) {
+        if !words.contains(word) {
+            words.push(word);
+        }
+    }
+    let rest = words.len().saturating_sub(LONGEST_LIST);
+    if rest > 0 {
+        words.sort_by_cached_key(|word| strsim::damerau_levenshtein(typed, word));
+        words.truncate(LONGEST_LIST);
+    }
+    let list = if words.is_empty() { "none".to_owned() } else { words.join(", ") };
+    let more = if rest > 0 { format!(" and {rest} more") } else { String::new() };
+    match nearest(typed, &words) {
+        Some(near) => format!("did you mean \"{near}\"? ({what}: {list}{more})"),
+        None => format!("{what}: {list}{more}"),
     }
 }
 
-/// "did you mean ..." if something is near, and the list of what there is.
-pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
-    let list = if known.is_empty() { "none".to_owned() } else { known.join(", ") };
-    match nearest(typed, known) {
-        Some(near) => format!("did you mean \"{near}\"? ({what}: {list})"),
-        None => format!("{what}: {list}"),
-    }
-}
+/// Of longer lists only so many words are shown.
+const LONGEST_LIST: usize = 20;
 
 /// The nearest of the known words, if any is near enough to be meant.
 pub(crate) fn nearest<'a>(typed: &str, known: &[&'a str]) -> Option<&'a str> {
@@ -380,8 +401,8 @@ macro_rules! raw_table {
                 span: $crate::input::reader::Span,
                 sink: &mut $crate::input::reader::Sink,
             ) -> Self {
-                $crate::input::reader::report_unknown(table, $title, Self::KEYS, sink);
-                let mut read = Self { span, ..Self::default() };
+                let typed = $crate::input::reader::report_unknown(table, $title, Self::KEYS, sink);
+                let mut read = Self { span, typed, ..Self::default() };
                 for (key, value) in table.iter() {
                     let typed: &str = key.get_ref().as_ref();
                     if Self::KEYS.contains(&typed) {

@@ -138,10 +138,10 @@ pub(crate) const UNITS: &[UnitRow] = &[
 
 /// Units that people write and that cannot be taken, with what to write instead.
 pub(crate) const REFUSED: &[(&str, &str)] = &[
-    ("barg", "this is a gauge pressure; give the absolute pressure in \"bar\""),
-    ("mbarg", "this is a gauge pressure; give the absolute pressure in \"mbar\""),
-    ("kPag", "this is a gauge pressure; give the absolute pressure in \"kPa\""),
-    ("psig", "this is a gauge pressure; give the absolute pressure in \"psi\""),
+    ("barg", "gauge pressures are not taken: write \"bar\" for an absolute pressure or a difference"),
+    ("mbarg", "gauge pressures are not taken: write \"mbar\" for an absolute pressure or a difference"),
+    ("kPag", "gauge pressures are not taken: write \"kPa\" for an absolute pressure or a difference"),
+    ("psig", "gauge pressures are not taken: write \"psi\" for an absolute pressure or a difference"),
     ("bara", "write \"bar\"; every pressure is absolute"),
     ("ton", "a ton may be 907, 1000 or 1016 kg; write \"t\" for 1000 kg, or \"lb\""),
     ("kmol", "flows are by mass; give \"t/h\", \"kg/h\" or \"lb/h\""),

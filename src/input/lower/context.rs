@@ -49,9 +49,11 @@ impl Context<'_> {
         key: &str,
         example: &str,
     ) -> Option<&'r T> {
-        if field.is_none() && !table.typed().iter().any(|(typed, _)| typed == key) {
-            let message = format!("{} has no {key}", R::TITLE);
-            self.sink.help(header(self.text, table.table_span()), message, "missing here", format!("add {example}"));
+        let bare = key.trim_matches(['[', ']']);
+        if field.is_none() && !table.typed().iter().any(|(typed, _)| typed == bare) {
+            let span = header(self.text, table.table_span());
+            let title = R::TITLE.replace("NAME", self.text.get(span.clone()).unwrap_or_default());
+            self.sink.help(span, format!("{title} has no {key}"), "missing here", format!("add {example}"));
         }
         field.as_ref()
     }
@@ -97,7 +99,7 @@ impl Context<'_> {
             return Some(meant.clone());
         }
         let known: Vec<&str> = words.iter().map(|(word, _)| *word).collect();
-        self.unknown_name(typed, &format!("\"{}\" is not a {name} that is known", typed.value), &known, "possible");
+        self.unknown_name(typed, &format!("\"{}\" is not a known {name}", typed.value), &known, "possible");
         None
     }
 

@@ -54,7 +54,7 @@ fn whole(context: &mut Context<'_>, raw: &RawFile, texts: &Texts<'_>) -> Option<
     let listed = compartments(context, raw_compartments);
     let names: Vec<String> = listed.iter().map(|(name, _)| name.clone()).collect();
     let compartments: Vec<Option<_>> = listed.into_iter().map(|(_, compartment)| compartment).collect();
-    share::sums(context, raw_compartments);
+    let mut shares_sound = share::sums(context, raw_compartments);
     if raw_compartments.len() < 2 {
         let message =
             format!("a wall has at least two sides, but the case has {} [[compartment]]", raw_compartments.len());
@@ -63,21 +63,26 @@ fn whole(context: &mut Context<'_>, raw: &RawFile, texts: &Texts<'_>) -> Option<
         let help = "list them side by side, in order of position";
         context.sink.help(at.unwrap_or(end..end), message, "too few compartments", help);
     }
-    let raw_shell = context.need(raw, &raw.shell, "shell", "a table [shell] with diameter = \"size\" or a length");
+    let raw_shell = context.need(raw, &raw.shell, "[shell]", "a table [shell] with diameter = \"size\" or a length");
     let shell = raw_shell.and_then(|raw| shell(context, raw));
-    let raw_wall = context.need(raw, &raw.wall, "wall", "a table [wall] with thickness and position");
+    let raw_wall = context.need(raw, &raw.wall, "[wall]", "a table [wall] with thickness and position");
     let wall = raw_wall.and_then(|raw| wall(context, raw, names.len().saturating_sub(1), shell.as_ref()));
     let reach = reach(raw);
     share::closed_top(context, raw_compartments, reach);
     let no_internals = Named(Vec::new());
-    let raw_internals =
-        context.need(raw, &raw.internals, "internals", "tables [internals.NAME], one for each kind of internals");
+    let raw_internals = context.need(
+        raw,
+        &raw.internals,
+        "[internals.NAME]",
+        "tables [internals.NAME], one for each kind of internals",
+    );
     let internals = internals(context, raw_internals.unwrap_or(&no_internals));
     let bands = band_names(raw.wall.as_ref());
     let around = Surroundings { compartments: &names, bands: &bands, internals: &internals, reach };
-    let raw_sections = context.need(raw, &raw.section, "section", "tables [[section]], at least one in each place");
+    let raw_sections = context.need(raw, &raw.section, "[[section]]", "tables [[section]], at least one in each place");
     let raw_sections = raw_sections.map(|many| many.items.as_slice()).unwrap_or_default();
-    let sketches = sections(context, raw_sections, &around);
+    let (sketches, places_sound) = sections(context, raw_sections, &around);
+    shares_sound &= places_sound && names.len() >= 2;
     let raw_devices = raw.device.as_ref().map(|many| many.items.as_slice()).unwrap_or_default();
     let devices = devices(context, raw_devices, &sketches, &names);
     let raw_streams = raw.stream.as_ref().map(|many| many.items.as_slice()).unwrap_or_default();
@@ -94,7 +99,9 @@ fn whole(context: &mut Context<'_>, raw: &RawFile, texts: &Texts<'_>) -> Option<
     let points = points(context, &ingredients);
     let compartments: Option<Vec<_>> = compartments.into_iter().collect();
     let places: Option<Vec<Place>> = sketches.iter().map(|sketch| sketch.place).collect();
-    if let (Some(compartments), Some(places), Some([design, ..])) = (&compartments, &places, points.as_deref()) {
+    if let (true, Some(compartments), Some(places), Some([design, ..])) =
+        (shares_sound, &compartments, &places, points.as_deref())
+    {
         share::agree_with_loads(context, raw_compartments, compartments, places, design);
     }
     let head = head?;

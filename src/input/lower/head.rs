@@ -23,7 +23,7 @@ pub(super) fn head(context: &mut Context<'_>, raw: &RawFile) -> Option<Head> {
         let message = format!("this program reads format 1, but the file says {}", format.value);
         context.sink.help(format.span.clone(), message, "not 1", "write \"format = 1\"");
     }
-    let case = context.need(raw, &raw.case, "case", "a table [case] with tag and title")?;
+    let case = context.need(raw, &raw.case, "[case]", "a table [case] with tag and title")?;
     let tag = context.need(case, &case.tag, "tag", "the column's tag, e.g. tag = \"C-340\"");
     let tag = tag.and_then(|tag| context.name(tag, "tag").map(str::to_owned));
     let title = context.need(case, &case.title, "title", "what the column does, e.g. title = \"Solvent splitter\"");
@@ -111,7 +111,7 @@ fn separation_table(context: &mut Context<'_>, raw: &RawSeparation) {
         let sum: f64 = values.iter().sum();
         if values.len() == list.typed && (sum - 1.0).abs() > 0.002 {
             let message = format!("the mole fractions of feed must sum to 1, but sum to {sum:.4}");
-            context.sink.add(list.span.clone(), message, "do not sum to 1");
+            context.sink.help(list.span.clone(), message, "do not sum to 1", "e.g. feed = [0.3, 0.3, 0.4]");
         }
         if let Some(volatility) = volatility
             && volatility.typed != list.typed
@@ -120,7 +120,12 @@ fn separation_table(context: &mut Context<'_>, raw: &RawSeparation) {
                 "volatility names {} components, but feed {}; both need one entry for each",
                 volatility.typed, list.typed
             );
-            context.sink.add(list.span.clone(), message, "another number of components");
+            context.sink.help(
+                list.span.clone(),
+                message,
+                "another number of components",
+                "list the same components in both",
+            );
         }
     }
 }

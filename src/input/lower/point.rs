@@ -41,7 +41,7 @@ pub(super) fn points(context: &mut Context<'_>, from: &Ingredients<'_>) -> Optio
     let loads = context.need(
         from.raw,
         &from.raw.loads,
-        "loads",
+        "[loads]",
         "a table [loads] with rows = \"below stage\" or \"leaving stage\"",
     );
     let rows_are = loads.and_then(|loads| {
@@ -86,7 +86,8 @@ fn gather(context: &mut Context<'_>, from: &Ingredients<'_>) -> Option<Vec<LoadR
         return None;
     }
     if inline.is_none() {
-        let span = from.raw.loads.as_ref().map(|loads| loads.span.clone()).unwrap_or_default();
+        // A missing [loads] has been reported already.
+        let span = from.raw.loads.as_ref().map(|loads| loads.span.clone())?;
         let message = "the case has no loads";
         let help = "add table = \"loads.csv\" (a file beside the case), or [[section.load]] rows in each section";
         context.sink.help(super::context::header(context.text, span), message, "no loads", help);
@@ -184,8 +185,8 @@ fn group(context: &mut Context<'_>, rows: Vec<LoadRow>, from: &Ingredients<'_>, 
         let span = points.first().map(|(.., span)| span.clone()).unwrap_or_default();
         sink.help(span, message, "first row", "name the design rows \"design\", or leave the column \"point\" out");
     }
-    // A section whose rows are all wrong is not called empty on top of that.
-    if sound {
+    // A section whose rows are wrong, or stand under a misspelt name, is not called empty on top of that.
+    if sound && (sink.items.is_empty() || !table) {
         for (point, sections, span) in &points {
             for (section, rows) in from.sections.iter().zip(sections) {
                 if rows.is_empty() && !section.name.is_empty() {
@@ -235,7 +236,8 @@ fn describe(context: &mut Context<'_>, raw: &[RawPoint], tabled: &Option<Tabled>
                         "take the factors out, or the rows",
                     )
                 };
-                context.sink.help(span.clone(), message, "stated twice", help);
+                let label = if name == DESIGN { "not for the design point" } else { "stated twice" };
+                context.sink.help(span.clone(), message, label, help);
                 sound = false;
                 None
             }

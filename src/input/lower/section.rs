@@ -30,8 +30,12 @@ pub(super) struct Surroundings<'a> {
     pub(super) reach: Reach,
 }
 
-/// All sections, in the order of the file.
-pub(super) fn sections(context: &mut Context<'_>, raw: &[RawSection], around: &Surroundings<'_>) -> Vec<Sketch> {
+/// All sections, in the order of the file, and whether every place has what it needs.
+pub(super) fn sections(
+    context: &mut Context<'_>,
+    raw: &[RawSection],
+    around: &Surroundings<'_>,
+) -> (Vec<Sketch>, bool) {
     let mut names: Vec<(String, Span)> = Vec::new();
     let mut sketches = Vec::new();
     for section in raw {
@@ -77,9 +81,9 @@ pub(super) fn sections(context: &mut Context<'_>, raw: &[RawSection], around: &S
         });
     }
     context.unique(&names, "sections");
-    every_place(context, &sketches, around);
+    let complete = every_place(context, &sketches, around);
     band_order(context, raw, &sketches, around);
-    sketches
+    (sketches, complete)
 }
 
 /// A place by its name.
@@ -153,11 +157,12 @@ fn band(context: &mut Context<'_>, raw: &RawSection, place: Option<Place>, bands
     }
 }
 
-fn every_place(context: &mut Context<'_>, sketches: &[Sketch], around: &Surroundings<'_>) {
-    // A place that could not be read may be the one that seems empty.
-    if sketches.iter().any(|sketch| sketch.place.is_none()) {
-        return;
+fn every_place(context: &mut Context<'_>, sketches: &[Sketch], around: &Surroundings<'_>) -> bool {
+    // A place that could not be read may be the one that seems empty, and no section at all has been reported already.
+    if sketches.is_empty() || sketches.iter().any(|sketch| sketch.place.is_none()) {
+        return false;
     }
+    let mut complete = true;
     let mut wanted: Vec<Place> = (0..around.compartments.len()).map(Place::Compartment).collect();
     if around.reach != Reach::Top {
         wanted.insert(0, Place::Above);
@@ -166,14 +171,16 @@ fn every_place(context: &mut Context<'_>, sketches: &[Sketch], around: &Surround
         wanted.push(Place::Below);
     }
     for place in wanted {
-        if !sketches.iter().any(|sketch| sketch.place == Some(place)) {
-            let words = place_words(place, around.compartments);
+        let words = place_words(place, around.compartments);
+        if !words.is_empty() && !sketches.iter().any(|sketch| sketch.place == Some(place)) {
+            complete = false;
             let message = format!("no section stands in the place \"{words}\"");
             let help = format!("add a [[section]] with place = \"{words}\"");
             let end = context.text.len();
             context.sink.help(end..end, message, "end of the case", help);
         }
     }
+    complete
 }
 
 /// In each compartment the bands run from top to bottom, as the sections do; each band has a section.

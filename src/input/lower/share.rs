@@ -9,34 +9,42 @@ use crate::input::reader::At;
 /// Stated shares and those of the loads agree within this.
 pub(super) const AGREE_WITHIN: f64 = 0.002;
 
-/// Sums of the stated shares.
-pub(super) fn sums(context: &mut Context<'_>, raw: &[RawCompartment]) {
+/// Sums of the stated shares; false if one of them cannot be.
+pub(super) fn sums(context: &mut Context<'_>, raw: &[RawCompartment]) -> bool {
+    if raw.len() < 2 {
+        return false;
+    }
     let vapour: Vec<Option<&At<f64>>> = raw.iter().map(|compartment| compartment.vapour_share.as_ref()).collect();
     let liquid: Vec<Option<&At<f64>>> = raw.iter().map(|compartment| compartment.liquid_share.as_ref()).collect();
-    sum(context, "vapour_share", &vapour);
-    sum(context, "liquid_share", &liquid);
+    let vapour_sound = sum(context, "vapour_share", &vapour);
+    let liquid_sound = sum(context, "liquid_share", &liquid);
+    vapour_sound && liquid_sound
 }
 
-fn sum(context: &mut Context<'_>, name: &str, shares: &[Option<&At<f64>>]) {
+fn sum(context: &mut Context<'_>, name: &str, shares: &[Option<&At<f64>>]) -> bool {
     let stated: Vec<&At<f64>> = shares.iter().flatten().copied().collect();
     let Some(last) = stated.last() else {
-        return;
+        return true;
     };
+    // A share out of its own range has been reported already.
+    if stated.iter().any(|share| !(0.0..=1.0).contains(&share.value)) {
+        return false;
+    }
     let sum: f64 = stated.iter().map(|share| share.value).sum();
     let all = stated.len() == shares.len();
     if all && (sum - 1.0).abs() > AGREE_WITHIN {
         let message = format!("the {name}s of all compartments must sum to 1, but sum to {sum:.4}");
-        context.sink.help(
-            last.span.clone(),
-            message,
-            "do not sum to 1",
-            "correct them, or leave one out: it takes the rest",
-        );
-    } else if !all && sum >= 1.0 {
+        let help = "correct them, or leave one out: it takes the rest";
+        context.sink.help(last.span.clone(), message, "do not sum to 1", help);
+        return false;
+    }
+    if !all && sum >= 1.0 {
         let message =
             format!("the {name}s that are stated sum to {sum:.4} already, which leaves nothing for the others");
         context.sink.help(last.span.clone(), message, "nothing left", "shares are fractions, e.g. 0.635");
+        return false;
     }
+    true
 }
 
 /// The stated vapour shares against the rows at the wall's lower edge, at the design point.
