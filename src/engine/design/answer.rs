@@ -5,7 +5,7 @@ use super::basis::{from_memory, limits, notes, records};
 use super::figures::sections;
 use super::judge::Bench;
 use super::model::Model;
-use super::place_wall::{Positions, equal_drop, positions};
+use super::place_wall::{COLD_STEP, Placer, Positions, equal_drop, positions};
 use super::remedy::remedies;
 use super::size::{Margin, PARTS, Part, Sized, size};
 use super::state::{PointState, absent_because, share_per_m};
@@ -30,9 +30,10 @@ const DESIGN: usize = 0;
 /// no shell or position answers.
 pub fn work(case: &Case, catalogue: &Catalogue) -> EngineResult<Answer> {
     let model = Model::new(case, catalogue)?;
-    let sized = size(&model)?;
+    let placer = Placer::new(&model);
+    let sized = size(&model, &placer)?;
     let [_, zone_m, _] = sized.diameters_m;
-    let by_rule = positions(&model, zone_m)?;
+    let by_rule = positions(&model, zone_m, placer.standing(zone_m)?)?;
     let arrangement = Arrangement::new(&model, sized.diameters_m, by_rule.standing.clone())?;
     let states = (0..model.points.len())
         .map(|point| PointState::new(&model, &arrangement.zone, point))
@@ -159,7 +160,7 @@ fn governed_by(model: &Model<'_>, sized: &Sized) -> GovernedBy {
     let runner_up = candidates.iter().find(|(_, _, m)| m.section != margin.section || m.criterion != margin.criterion);
     let runner_up = runner_up.map_or_else(String::new, |(own_m, _, m)| {
         let (section, point) = name(m);
-        format!("{} of \"{section}\" at \"{point}\", {own_m:.4} m", m.criterion.name())
+        format!("{} of \"{section}\" at \"{point}\", about {own_m:.3} m", m.criterion.name())
     });
     let (section, point) = name(margin);
     GovernedBy {
@@ -183,7 +184,10 @@ fn walls(
     let mut out = Vec::new();
     for (band, stated) in model.case.wall.bands.iter().enumerate() {
         let drop = if absent_because(model).is_none() {
-            equal_drop(model, zone.diameter_m, &zone.positions_m, band).ok()
+            match stated.position {
+                Position::EqualPressureDrop => Some(zone.positions_m.clone()),
+                _ => equal_drop(model, zone.diameter_m, &zone.positions_m, band, COLD_STEP).ok(),
+            }
         } else {
             None
         };

@@ -1,6 +1,6 @@
 //! A shell with its walls: areas and tray layouts of every section.
 
-use super::model::{Model, Stack};
+use super::model::{CompiledSection, Model, Stack};
 use crate::engine::error::{EngineError, EngineResult};
 use crate::engine::geometry::{Disc, Strip, compartments};
 use crate::engine::hydraulics::section::SectionGeometry;
@@ -38,15 +38,30 @@ pub(crate) struct SideGeometry {
     pub clear_depth_m: f64,
 }
 
+/// Geometry of every section of a stack; a section with the internals and the band of the one above it is laid out alike.
+fn stack_geometry<'s>(
+    stack: &Stack<'_>,
+    strip_of: impl Fn(&CompiledSection<'_>) -> EngineResult<&'s Strip>,
+) -> EngineResult<Vec<SectionGeometry>> {
+    let mut out: Vec<SectionGeometry> = Vec::with_capacity(stack.sections.len());
+    let mut above: Option<(usize, usize)> = None;
+    for section in &stack.sections {
+        let kind = (section.section.internals, section.section.band);
+        let geometry = match (above == Some(kind), out.last()) {
+            (true, Some(same)) => same.clone(),
+            _ => section.model.geometry(section.tray, strip_of(section)?)?,
+        };
+        above = Some(kind);
+        out.push(geometry);
+    }
+    Ok(out)
+}
+
 impl EndGeometry {
     /// The whole disc, above or below the wall.
     pub fn new(stack: &Stack<'_>, diameter_m: f64) -> EngineResult<Self> {
         let strip = Disc::from_diameter(Length::from_si(diameter_m))?.whole()?;
-        let sections = stack
-            .sections
-            .iter()
-            .map(|section| section.model.geometry(section.tray, &strip))
-            .collect::<EngineResult<Vec<_>>>()?;
+        let sections = stack_geometry(stack, |_| Ok(&strip))?;
         Ok(Self { sections, area_m2: strip.area().si() })
     }
 }
@@ -75,11 +90,7 @@ impl ZoneGeometry {
                         ),
                     })
                 };
-                let sections = stack
-                    .sections
-                    .iter()
-                    .map(|section| section.model.geometry(section.tray, strip_of(section.section.band)?))
-                    .collect::<EngineResult<Vec<_>>>()?;
+                let sections = stack_geometry(stack, |section| strip_of(section.section.band))?;
                 let mut area_m2 = f64::INFINITY;
                 let mut clear_depth_m = f64::INFINITY;
                 for band in 0..bands.len() {

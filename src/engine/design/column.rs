@@ -2,7 +2,7 @@
 
 use super::arrangement::{Arrangement, EndGeometry};
 use super::model::{Model, Stack};
-use super::place_wall::standing;
+use super::place_wall::Placer;
 use super::zone::Zone;
 use crate::engine::error::EngineResult;
 
@@ -30,12 +30,17 @@ pub(crate) fn ends_drop_pa(model: &Model<'_>, arrangement: &Arrangement, point: 
 
 /// Pressure drop of the column at the required shares, Pa: the wall zone counts with its greatest side. None if internals have
 /// no friction or are beyond flood.
-pub(crate) fn column_drop_pa(model: &Model<'_>, diameters_m: [f64; 3], point: usize) -> EngineResult<Option<f64>> {
+pub(crate) fn column_drop_pa(
+    model: &Model<'_>,
+    placer: &Placer<'_, '_>,
+    diameters_m: [f64; 3],
+    point: usize,
+) -> EngineResult<Option<f64>> {
     let [_, zone_m, _] = diameters_m;
     if !model.has_friction() {
         return Ok(None);
     }
-    let Ok(positions) = standing(model, zone_m) else { return Ok(None) };
+    let Ok(positions) = placer.standing(zone_m) else { return Ok(None) };
     let arrangement = Arrangement::new(model, diameters_m, positions)?;
     Ok(required_drop_pa(model, &arrangement, point))
 }

@@ -1,6 +1,7 @@
 //! The compiled case: loads as flat arrays in SI, grouped by place, with everything that does not depend on the shell.
 
 use super::limits::{ColumnLimits, SectionLimits};
+use super::place_wall::BandWeights;
 use crate::engine::case::{Case, Device, DeviceLoss, End, InternalsKind, Place, Reach, Section, Tray};
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::error::{EngineError, EngineResult, finite};
@@ -20,6 +21,8 @@ pub(crate) struct Model<'a> {
     pub points: Vec<PointModel<'a>>,
     /// By point.
     pub column_limits: Vec<ColumnLimits>,
+    /// By band: what the areas of the compartments go in proportion to.
+    pub weights: Vec<BandWeights>,
 }
 
 /// The sections and devices of one place, sections from top to bottom.
@@ -99,7 +102,8 @@ impl<'a> Model<'a> {
             })
             .collect::<EngineResult<Vec<_>>>()?;
         let column_limits = (0..case.points.len()).map(|p| ColumnLimits::new(case, p)).collect();
-        Ok(Self { case, catalogue, above, sides, below, points, column_limits })
+        let weights = (0..case.wall.bands.len()).map(|band| BandWeights::new(&sides, band)).collect();
+        Ok(Self { case, catalogue, above, sides, below, points, column_limits, weights })
     }
 
     /// All stacks: above the wall, the compartments, below the wall.

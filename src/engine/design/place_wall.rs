@@ -1,13 +1,14 @@
 //! Where the wall stands: equal flood, equal pressure drop, by vapour load.
 
 use super::arrangement::ZoneGeometry;
-use super::model::Model;
+use super::model::{Model, Stack};
 use super::zone::Zone;
 use crate::engine::case::Position;
 use crate::engine::error::{EngineError, EngineResult};
 use crate::engine::geometry::{Disc, positions_for_shares};
 use crate::engine::solve::optimise::{DesignRoot, design_root};
 use crate::engine::units::{Length, Si};
+use std::cell::RefCell;
 
 /// Least distance of a wall's face from its neighbour or the shell while searching, as part of the diameter.
 const LEAST_GAP: f64 = 1e-6;
@@ -29,84 +30,113 @@ pub(crate) struct Positions {
     pub standing: Vec<Vec<f64>>,
 }
 
-/// Positions by equal flood and by vapour load, and the standing ones, in a shell of this diameter.
-pub(crate) fn positions(model: &Model<'_>, diameter_m: f64) -> EngineResult<Positions> {
-    let mut out = Positions::default();
-    let mut wants_drop: Option<usize> = None;
-    for (band, stated) in model.case.wall.bands.iter().enumerate() {
-        let flood = by_weight(model, diameter_m, &weights(model, band, Weight::Flood))?;
-        let load = by_weight(model, diameter_m, &weights(model, band, Weight::VapourLoad))?;
-        out.standing.push(match &stated.position {
-            Position::EqualFlood => flood.clone(),
-            Position::VapourLoad => load.clone(),
-            Position::Given(given) => given.iter().map(|x| x.si()).collect(),
-            Position::EqualPressureDrop => {
-                if wants_drop.replace(band).is_some() {
-                    return Err(EngineError::Search {
-                        what: "wall positions".to_owned(),
-                        why: "several bands say \"equal pressure drop\", and one equation cannot place them all; give all but one \
-                              a length or another rule"
-                            .to_owned(),
-                    });
-                }
-                flood.clone()
-            }
-        });
-        out.equal_flood.push(flood);
-        out.vapour_load.push(load);
-    }
-    if let Some(band) = wants_drop {
-        out.standing = equal_drop(model, diameter_m, &out.standing, band)?;
-    }
-    Ok(out)
-}
-
-/// The standing positions alone.
-pub(crate) fn standing(model: &Model<'_>, diameter_m: f64) -> EngineResult<Vec<Vec<f64>>> {
-    positions(model, diameter_m).map(|p| p.standing)
-}
-
-/// What areas go in proportion to.
-#[derive(Clone, Copy, PartialEq, Eq)]
-enum Weight {
-    /// The area at which the worst row of all points stands at its flood limit.
-    Flood,
-    /// The greatest vapour load.
-    VapourLoad,
-}
-
-fn weights(model: &Model<'_>, band: usize, weight: Weight) -> Vec<f64> {
-    let of_side = |side: &super::model::Stack<'_>, any_band: bool| {
-        let mut greatest = 0.0_f64;
-        for section in side.sections.iter().filter(|s| any_band || s.section.band == band) {
-            for (point, limits) in section.limits.iter().enumerate() {
-                for load in section.loads_at(point) {
-                    greatest = greatest.max(match weight {
-                        Weight::Flood => section.model.flooding_area_m2(load) / limits.flood.si,
-                        Weight::VapourLoad => load.vapour_load_m3_s(),
-                    });
-                }
-            }
-        }
-        greatest
+/// Positions by equal flood and by vapour load in a shell of this diameter, beside those that stand there.
+pub(crate) fn positions(model: &Model<'_>, diameter_m: f64, standing: Vec<Vec<f64>>) -> EngineResult<Positions> {
+    let by = |pick: fn(&BandWeights) -> &[f64]| -> EngineResult<Vec<Vec<f64>>> {
+        model.weights.iter().map(|weights| by_weight(model, diameter_m, pick(weights))).collect()
     };
-    model
-        .sides
-        .iter()
-        .map(|side| {
-            let in_band = of_side(side, false);
-            // A compartment without a section in this band takes the load of the whole compartment.
-            if in_band > 0.0 { in_band } else { of_side(side, true) }
-        })
-        .collect()
+    Ok(Positions { equal_flood: by(|w| &w.flood)?, vapour_load: by(|w| &w.vapour_load)?, standing })
+}
+
+/// Places the walls by the case's rules, in one shell after another. What was found in the last shell is where the search in the
+/// next one begins, which saves most of it.
+pub(crate) struct Placer<'m, 'a> {
+    model: &'m Model<'a>,
+    /// Diameter and positions of the last search for equal pressure drop.
+    last: RefCell<Option<(f64, Vec<f64>)>>,
+}
+
+impl<'m, 'a> Placer<'m, 'a> {
+    /// Of a case.
+    pub fn new(model: &'m Model<'a>) -> Self {
+        Self { model, last: RefCell::new(None) }
+    }
+
+    /// The standing positions in a shell of this diameter, by band and wall.
+    ///
+    /// # Errors
+    /// Where no position answers, or several bands ask for equal pressure drop.
+    pub fn standing(&self, diameter_m: f64) -> EngineResult<Vec<Vec<f64>>> {
+        let mut standing = Vec::with_capacity(self.model.weights.len());
+        let mut wants_drop: Option<usize> = None;
+        for (band, (stated, weights)) in self.model.case.wall.bands.iter().zip(&self.model.weights).enumerate() {
+            standing.push(match &stated.position {
+                Position::EqualFlood => by_weight(self.model, diameter_m, &weights.flood)?,
+                Position::VapourLoad => by_weight(self.model, diameter_m, &weights.vapour_load)?,
+                Position::Given(given) => given.iter().map(|x| x.si()).collect(),
+                Position::EqualPressureDrop => {
+                    if wants_drop.replace(band).is_some() {
+                        return Err(EngineError::Search {
+                            what: "wall positions".to_owned(),
+                            why: "several bands say \"equal pressure drop\", and one equation cannot place them all; give all but \
+                                  one a length or another rule"
+                                .to_owned(),
+                        });
+                    }
+                    self.start(diameter_m, weights)?
+                }
+            });
+        }
+        if let Some(band) = wants_drop {
+            let warm = self.last.borrow().is_some();
+            let step = if warm { WARM_STEP } else { COLD_STEP };
+            standing = equal_drop(self.model, diameter_m, &standing, band, step)?;
+            *self.last.borrow_mut() = standing.get(band).map(|found| (diameter_m, found.clone()));
+        }
+        Ok(standing)
+    }
+
+    fn start(&self, diameter_m: f64, weights: &BandWeights) -> EngineResult<Vec<f64>> {
+        match &*self.last.borrow() {
+            Some((last_m, found)) => Ok(found.iter().map(|x| x * diameter_m / last_m).collect()),
+            None => by_weight(self.model, diameter_m, &weights.flood),
+        }
+    }
+}
+
+/// First step of a search, as part of the diameter: where nothing is known, and beside a known neighbour.
+pub(crate) const COLD_STEP: f64 = 0.02;
+pub(crate) const WARM_STEP: f64 = 0.001;
+
+/// What areas go in proportion to in one band, by compartment.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub(crate) struct BandWeights {
+    /// The area at which the worst row of all points stands at its flood limit.
+    pub flood: Vec<f64>,
+    /// The greatest vapour load.
+    pub vapour_load: Vec<f64>,
+}
+
+impl BandWeights {
+    /// Of one band. A compartment without a section in the band takes the figure of the whole compartment.
+    pub fn new(sides: &[Stack<'_>], band: usize) -> Self {
+        let mut out = Self::default();
+        for side in sides {
+            let of = |any_band: bool| {
+                let (mut flood, mut vapour_load) = (0.0_f64, 0.0_f64);
+                for section in side.sections.iter().filter(|s| any_band || s.section.band == band) {
+                    for (point, limits) in section.limits.iter().enumerate() {
+                        for load in section.loads_at(point) {
+                            flood = flood.max(section.model.flooding_area_m2(load) / limits.flood.si);
+                            vapour_load = vapour_load.max(load.vapour_load_m3_s());
+                        }
+                    }
+                }
+                (flood, vapour_load)
+            };
+            let in_band = of(false);
+            let (flood, vapour_load) = if in_band.0 > 0.0 { in_band } else { of(true) };
+            out.flood.push(flood);
+            out.vapour_load.push(vapour_load);
+        }
+        out
+    }
 }
 
 /// Areas in proportion to weights.
 fn by_weight(model: &Model<'_>, diameter_m: f64, weights: &[f64]) -> EngineResult<Vec<f64>> {
     let disc = Disc::from_diameter(Length::from_si(diameter_m))?;
-    let sum: f64 = weights.iter().sum();
-    let shares: Vec<f64> = weights.iter().map(|weight| weight / sum).collect();
-    let positions = positions_for_shares(&disc, &shares, model.case.wall.thickness)?;
+    let positions = positions_for_shares(&disc, weights, model.case.wall.thickness)?;
     Ok(positions.into_iter().map(Si::si).collect())
 }
 
@@ -116,13 +146,14 @@ pub(crate) fn equal_drop(
     diameter_m: f64,
     others: &[Vec<f64>],
     band: usize,
+    first_step: f64,
 ) -> EngineResult<Vec<Vec<f64>>> {
     let with = |positions: &[f64]| -> Vec<Vec<f64>> {
         let replace = |(b, walls): (usize, &Vec<f64>)| if b == band { positions.to_vec() } else { walls.clone() };
         others.iter().enumerate().map(replace).collect()
     };
     let start = others.get(band).cloned().unwrap_or_default();
-    let found = sweep(model, diameter_m, start, |positions, wall| {
+    let found = sweep(model, diameter_m, start, first_step, |positions, wall| {
         let zone = ZoneGeometry::new(model, diameter_m, with(positions))?;
         let zone = Zone::new(model, &zone, DESIGN);
         let drop = |side: usize| zone.sides.get(side).and_then(|s| s.drop_pa(1.0).ok()).map(f64::ln);
@@ -145,6 +176,7 @@ fn sweep(
     model: &Model<'_>,
     diameter_m: f64,
     mut positions: Vec<f64>,
+    first_step: f64,
     residual: impl Fn(&[f64], usize) -> EngineResult<f64>,
 ) -> EngineResult<Vec<f64>> {
     let walls = positions.len();
@@ -152,7 +184,7 @@ fn sweep(
         let mut moved_m = 0.0_f64;
         for wall in 0..walls {
             let before = positions.get(wall).copied().unwrap_or(0.0);
-            let found = place_one(model, diameter_m, &positions, wall, &residual)?;
+            let found = place_one(model, diameter_m, (&positions, wall), first_step, &residual)?;
             moved_m = moved_m.max((found - before).abs());
             if let Some(position) = positions.get_mut(wall) {
                 *position = found;
@@ -171,8 +203,8 @@ fn sweep(
 fn place_one(
     model: &Model<'_>,
     diameter_m: f64,
-    positions: &[f64],
-    wall: usize,
+    (positions, wall): (&[f64], usize),
+    first_step: f64,
     residual: impl Fn(&[f64], usize) -> EngineResult<f64>,
 ) -> EngineResult<f64> {
     let thickness_m = model.case.wall.thickness.si();
@@ -195,7 +227,7 @@ fn place_one(
     let first = at(start)?;
     // Walk from the start towards the sign change, so that shapes which cannot be built near the shell are never asked for.
     let direction = if first >= 0.0 { 1.0 } else { -1.0 };
-    let (mut near, mut step) = (start, 0.02 * diameter_m);
+    let (mut near, mut step) = (start, first_step * diameter_m);
     let mut bracket = None;
     for _ in 0..60 {
         let far = (near + direction * step).clamp(low, high);
@@ -207,7 +239,7 @@ fn place_one(
             Ok(_) if far == low || far == high => break,
             Ok(_) => {
                 near = far;
-                step *= 1.6;
+                step *= 2.0;
             }
             Err(_) => step *= 0.5,
         }

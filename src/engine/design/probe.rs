@@ -3,7 +3,7 @@
 use super::arrangement::Arrangement;
 use super::balance::all_balances;
 use super::model::Model;
-use super::place_wall::standing;
+use super::place_wall::Placer;
 use super::size::size;
 use super::zone::Zone;
 use crate::engine::case::Case;
@@ -25,9 +25,11 @@ impl<'a> Probe<'a> {
     /// As [`super::work`].
     pub fn new(case: &'a Case, catalogue: &'a Catalogue) -> EngineResult<Self> {
         let model = Model::new(case, catalogue)?;
-        let sized = size(&model)?;
+        let placer = Placer::new(&model);
+        let sized = size(&model, &placer)?;
         let [_, zone_m, _] = sized.diameters_m;
-        let arrangement = Arrangement::new(&model, sized.diameters_m, standing(&model, zone_m)?)?;
+        let standing = placer.standing(zone_m)?;
+        let arrangement = Arrangement::new(&model, sized.diameters_m, standing)?;
         Ok(Self { model, arrangement })
     }
 

@@ -3,7 +3,7 @@
 use super::arrangement::{EndGeometry, ZoneGeometry};
 use super::column::column_drop_pa;
 use super::model::{Model, Stack};
-use super::place_wall::standing;
+use super::place_wall::Placer;
 use super::rate::{AT_LIMIT, rate, sizes_the_shell};
 use crate::engine::case::Diameter;
 use crate::engine::error::{EngineError, EngineResult};
@@ -17,8 +17,8 @@ use std::f64::consts::PI;
 const LOG_TOLERANCE: f64 = 1e-13;
 /// Logarithm that stands for "no answer at all in so small a shell"; far beyond any real miss.
 const HOPELESS: f64 = 20.0;
-/// How many of the next criteria are solved for the runner-up.
-const RUNNERS: usize = 3;
+/// Factor on the diameter over which the power of each figure is taken.
+const NEARBY: f64 = 1.01;
 /// Doublings of the diameter before sizing gives up.
 const DOUBLINGS: usize = 12;
 
@@ -53,7 +53,7 @@ pub(crate) struct Need {
     pub diameter_m: f64,
     /// What sets it.
     pub governing: Margin,
-    /// The next one and its own least diameter.
+    /// The next one and about its own least diameter.
     pub runner_up: Option<(Margin, f64)>,
 }
 
@@ -68,12 +68,12 @@ pub(crate) struct Sized {
 }
 
 /// Sizes what the case leaves open.
-pub(crate) fn size(model: &Model<'_>) -> EngineResult<Sized> {
-    let zone = need(model, Part::WallZone)?;
+pub(crate) fn size(model: &Model<'_>, placer: &Placer<'_, '_>) -> EngineResult<Sized> {
+    let zone = need(model, placer, Part::WallZone)?;
     // At a head where the wall is closed there is no section: the shell there is the wall zone's.
     let of_end = |stack: &Stack<'_>, part: Part| match stack.sections.is_empty() {
         true => Ok(zone.clone()),
-        false => need(model, part),
+        false => need(model, placer, part),
     };
     let (above, below) = (of_end(&model.above, Part::Above)?, of_end(&model.below, Part::Below)?);
     let needs = [above, zone, below];
@@ -93,7 +93,7 @@ pub(crate) fn size(model: &Model<'_>) -> EngineResult<Sized> {
         }
         diameters_m
     };
-    let by_column = for_the_column(model, least_m, &with_given)?;
+    let by_column = for_the_column(model, placer, least_m, &with_given)?;
     if let Some((_, enlarged_m)) = &by_column {
         least_m = *enlarged_m;
     }
@@ -104,14 +104,14 @@ pub(crate) fn size(model: &Model<'_>) -> EngineResult<Sized> {
 }
 
 /// What one part needs.
-fn need(model: &Model<'_>, part: Part) -> EngineResult<Need> {
-    let by_flood_m = flood_diameter_m(model, part)?;
+fn need(model: &Model<'_>, placer: &Placer<'_, '_>, part: Part) -> EngineResult<Need> {
+    let by_flood_m = flood_diameter_m(model, placer, part)?;
     let worst = |diameter_m: f64| -> EngineResult<f64> {
-        Ok(margins(model, part, diameter_m)?
+        Ok(margins(model, placer, part, diameter_m)?
             .map_or(HOPELESS, |list| list.iter().map(|m| m.ratio.ln()).fold(f64::NEG_INFINITY, f64::max).min(HOPELESS)))
     };
     let diameter_m = least_diameter_m(by_flood_m, worst)?;
-    let mut list = margins(model, part, diameter_m)?.ok_or_else(|| EngineError::Search {
+    let mut list = margins(model, placer, part, diameter_m)?.ok_or_else(|| EngineError::Search {
         what: "shell diameter".to_owned(),
         why: "a correlation has no answer even at the diameter found".to_owned(),
     })?;
@@ -121,28 +121,34 @@ fn need(model: &Model<'_>, part: Part) -> EngineResult<Need> {
         what: "shell diameter".to_owned(),
         why: "no criterion concerns this part of the shell".to_owned(),
     })?;
-    let mut runner_up: Option<(Margin, f64)> = None;
-    for margin in list.take(RUNNERS) {
-        let of_one = |diameter_m: f64| -> EngineResult<f64> {
-            let ratio = margins(model, part, diameter_m)?.and_then(|list| {
-                list.iter()
-                    .find(|m| m.criterion == margin.criterion && m.section == margin.section)
-                    .map(|m| m.ratio.ln())
-            });
-            Ok(ratio.map_or(HOPELESS, |r| r.min(HOPELESS)))
-        };
-        // A criterion that holds in every shell this search can build is no runner-up.
-        if let Ok(own_m) = smaller_diameter_m(diameter_m, of_one)
-            && runner_up.as_ref().is_none_or(|(_, best_m)| own_m > *best_m)
-        {
-            runner_up = Some((margin, own_m));
-        }
-    }
+    let runner_up = runner_up(model, placer, part, diameter_m, list)?;
     Ok(Need { by_flood_m, diameter_m, governing, runner_up })
 }
 
+/// The criterion that would govern next, and about at which diameter: each figure is carried on as the power of the diameter that
+/// it follows here.
+fn runner_up(
+    model: &Model<'_>,
+    placer: &Placer<'_, '_>,
+    part: Part,
+    diameter_m: f64,
+    rest: impl Iterator<Item = Margin>,
+) -> EngineResult<Option<(Margin, f64)>> {
+    let Some(wider) = margins(model, placer, part, diameter_m * NEARBY)? else { return Ok(None) };
+    let mut best: Option<(Margin, f64)> = None;
+    for margin in rest {
+        let there = wider.iter().find(|m| m.criterion == margin.criterion && m.section == margin.section);
+        let power = there.map_or(0.0, |there| (margin.ratio / there.ratio).ln() / NEARBY.ln());
+        let own_m = diameter_m * margin.ratio.powf(1.0 / power);
+        if power > 0.0 && own_m.is_finite() && best.as_ref().is_none_or(|(_, best_m)| own_m > *best_m) {
+            best = Some((margin, own_m));
+        }
+    }
+    Ok(best)
+}
+
 /// Least diameter by flood alone.
-fn flood_diameter_m(model: &Model<'_>, part: Part) -> EngineResult<f64> {
+fn flood_diameter_m(model: &Model<'_>, placer: &Placer<'_, '_>, part: Part) -> EngineResult<f64> {
     let end = |stack: &Stack<'_>| (4.0 / PI * required_area_m2(stack, |_| true)).sqrt();
     match part {
         Part::Above => Ok(end(&model.above)),
@@ -158,7 +164,7 @@ fn flood_diameter_m(model: &Model<'_>, part: Part) -> EngineResult<f64> {
             let start_m = (4.0 / PI * areas_m2).sqrt();
             let worst = |diameter_m: f64| -> EngineResult<f64> {
                 // A shell too small for a given wall is as bad as one that floods.
-                let Ok(positions) = standing(model, diameter_m) else { return Ok(HOPELESS) };
+                let Ok(positions) = placer.standing(diameter_m) else { return Ok(HOPELESS) };
                 let Ok(zone) = ZoneGeometry::new(model, diameter_m, positions) else { return Ok(HOPELESS) };
                 let stands = zone.sides.iter().flat_map(|side| &side.sections);
                 let ratios = sections_m2.iter().zip(stands).map(|(need, geometry)| (need / geometry.area_m2).ln());
@@ -183,7 +189,12 @@ pub(crate) fn required_area_m2(stack: &Stack<'_>, chosen: impl Fn(usize) -> bool
 }
 
 /// Sizing margins of one part in a shell of this diameter; none if a row is beyond flood or the wall cannot stand in it.
-fn margins(model: &Model<'_>, part: Part, diameter_m: f64) -> EngineResult<Option<Vec<Margin>>> {
+fn margins(
+    model: &Model<'_>,
+    placer: &Placer<'_, '_>,
+    part: Part,
+    diameter_m: f64,
+) -> EngineResult<Option<Vec<Margin>>> {
     let mut out = Vec::new();
     let fits = match part {
         Part::Above => {
@@ -196,7 +207,7 @@ fn margins(model: &Model<'_>, part: Part, diameter_m: f64) -> EngineResult<Optio
         }
         Part::WallZone => {
             // In a shell too small for the wall, or where both sides are beyond flood, nothing can be placed.
-            let Ok(positions) = standing(model, diameter_m) else { return Ok(None) };
+            let Ok(positions) = placer.standing(diameter_m) else { return Ok(None) };
             let Ok(zone) = ZoneGeometry::new(model, diameter_m, positions) else { return Ok(None) };
             let mut fits = true;
             for (side, geometry) in model.sides.iter().zip(&zone.sides) {
@@ -255,24 +266,10 @@ fn least_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> E
     })
 }
 
-/// The diameter at or below `start_m` at which one criterion alone would stand at its limit.
-fn smaller_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> EngineResult<f64> {
-    let mut high_m = start_m;
-    for _ in 0..DOUBLINGS * 8 {
-        let low_m = high_m * 0.97;
-        if worst(low_m)? >= 0.0 {
-            let root =
-                DesignRoot { what: "shell diameter", from: low_m.ln(), to: high_m.ln(), tolerance: LOG_TOLERANCE };
-            return design_root(root, |log_m| worst(log_m.exp())).map(f64::exp);
-        }
-        high_m = low_m;
-    }
-    Err(EngineError::Search { what: "shell diameter".to_owned(), why: "the criterion never governs".to_owned() })
-}
-
 /// Enlarges all sized parts by one factor until the column's pressure drop holds; none if it holds already or has no limit.
 fn for_the_column(
     model: &Model<'_>,
+    placer: &Placer<'_, '_>,
     least_m: [f64; 3],
     with_given: &impl Fn([f64; 3]) -> [f64; 3],
 ) -> EngineResult<Option<(Margin, [f64; 3])>> {
@@ -285,7 +282,7 @@ fn for_the_column(
         let mut worst: Option<Margin> = None;
         for (point, limits) in model.column_limits.iter().enumerate() {
             let Some(limit) = &limits.pressure_drop else { continue };
-            let Some(drop_pa) = column_drop_pa(model, diameters_m, point)? else { return Ok(None) };
+            let Some(drop_pa) = column_drop_pa(model, placer, diameters_m, point)? else { return Ok(None) };
             let ratio = drop_pa / limit.si;
             if worst.as_ref().is_none_or(|w| ratio > w.ratio) {
                 worst = Some(Margin { criterion: Criterion::PressureDrop, section: None, point, ratio });

@@ -32,6 +32,8 @@ pub(crate) struct SieveTray {
     pub system_factor: f64,
     orifice_coefficient: f64,
     hole_area_factor: f64,
+    /// Bennett's Cb at this weir height.
+    crest_coefficient: f64,
 }
 
 /// Everything of one tray at one load; the worst of its passes where they differ.
@@ -69,6 +71,7 @@ impl SieveTray {
         Self {
             orifice_coefficient: methods.orifice.coefficient(deck_thickness_m / hole_diameter_m, tray.hole_area),
             hole_area_factor: methods.hole_area.factor(tray.hole_area),
+            crest_coefficient: methods.bennett.crest_coefficient(tray.weir_height.si()),
             spacing_m: tray.spacing.si(),
             weir_height_m: tray.weir_height.si(),
             hole_diameter_m,
@@ -128,8 +131,14 @@ impl SieveTray {
     /// Total head of one deck, m of its liquid; the mean of its passes, which share one vapour space.
     fn deck_head_m(&self, deck: &Deck, load: &StageLoad) -> f64 {
         let passes = deck.passes();
-        let wet: f64 = passes.iter().map(|pass| self.liquid_head_m(deck, pass, load)).sum();
+        let froth_density = self.froth_density(deck, load);
+        let wet: f64 = passes.iter().map(|pass| self.liquid_head_m(deck, pass, load, froth_density)).sum();
         self.dry_head_m(deck, load) + wet / passes.len() as f64 + self.residual_head_m(load)
+    }
+
+    /// Relative froth density on a deck by Bennett, Agrawal and Cook.
+    fn froth_density(&self, deck: &Deck, load: &StageLoad) -> f64 {
+        self.methods.bennett.froth_density(load.vapour_m3_s() / deck.active_area.si() * load.capacity_group())
     }
 
     fn dry_head_m(&self, deck: &Deck, load: &StageLoad) -> f64 {
@@ -150,10 +159,9 @@ impl SieveTray {
     }
 
     /// Clear liquid on one pass by the chosen model, m.
-    fn liquid_head_m(&self, deck: &Deck, pass: &Pass, load: &StageLoad) -> f64 {
-        let weir_load_m2_s = self.weir_load_m2_s(pass, load);
+    fn liquid_head_m(&self, deck: &Deck, pass: &Pass, load: &StageLoad, froth_density: f64) -> f64 {
         match &self.methods.liquid_head {
-            LiquidHead::Bennett => self.bennett_head_m(deck, weir_load_m2_s, load),
+            LiquidHead::Bennett => self.bennett_head_m(self.weir_load_m2_s(pass, load), froth_density),
             LiquidHead::Aeration(fair) => {
                 let velocity_m_s = load.vapour_m3_s() / deck.active_area.si();
                 let beta = fair.beta(velocity_m_s * load.rho_v_kg_m3.sqrt());
@@ -163,9 +171,13 @@ impl SieveTray {
     }
 
     /// Clear liquid by Bennett, Agrawal and Cook, which the weep rate takes whatever model gives the pressure drop.
-    fn bennett_head_m(&self, deck: &Deck, weir_load_m2_s: f64, load: &StageLoad) -> f64 {
-        let ks_m_s = load.vapour_m3_s() / deck.active_area.si() * load.capacity_group();
-        self.methods.bennett.head_m(ks_m_s, self.weir_height_m, weir_load_m2_s)
+    fn bennett_head_m(&self, weir_load_m2_s: f64, froth_density: f64) -> f64 {
+        self.methods.bennett.head_at_density_m(
+            froth_density,
+            self.crest_coefficient,
+            self.weir_height_m,
+            weir_load_m2_s,
+        )
     }
 
     /// Crest over the weir, m, with the constriction of the converging deck: the sheet contracts to the line that lies one
@@ -205,9 +217,10 @@ impl SieveTray {
 
     /// Everything of one deck; `below` is the tray on which its downcomers discharge.
     pub fn deck_figures(&self, deck: &Deck, below: &Deck, load: &StageLoad) -> TrayFigures {
+        let froth_density = self.froth_density(deck, load);
         let heads = |deck: &Deck, pass: &Pass| PassHeads {
             weir_load_m2_s: self.weir_load_m2_s(pass, load),
-            liquid_head_m: self.liquid_head_m(deck, pass, load),
+            liquid_head_m: self.liquid_head_m(deck, pass, load, froth_density),
             crest_m: self.crest_m(pass, load),
         };
         let dry_head_m = self.dry_head_m(deck, load);
@@ -241,7 +254,7 @@ impl SieveTray {
                 self.hole_diameter_m,
                 load.rho_v_kg_m3,
             );
-            let weep_head_m = self.bennett_head_m(deck, heads.weir_load_m2_s, load);
+            let weep_head_m = self.bennett_head_m(heads.weir_load_m2_s, froth_density);
             weep_m3_s += self.methods.weep.rate_m_s(hole_velocity_m_s, weep_head_m, load.rho_v_kg_m3, load.rho_l_kg_m3)
                 * deck.hole_area.si()
                 / deck.passes().len() as f64;

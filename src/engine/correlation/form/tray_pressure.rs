@@ -119,9 +119,19 @@ impl BennettLiquid {
 
     /// Clear liquid on the tray, m.
     pub fn head_m(&self, ks_m_s: f64, weir_height_m: f64, weir_load_m2_s: f64) -> f64 {
-        let phi = self.froth_density(ks_m_s);
+        let crest_coefficient = self.crest_coefficient(weir_height_m);
+        self.head_at_density_m(self.froth_density(ks_m_s), crest_coefficient, weir_height_m, weir_load_m2_s)
+    }
+
+    /// Cb of a weir height: a tray has one, so it need not be worked out for every load.
+    pub fn crest_coefficient(&self, weir_height_m: f64) -> f64 {
         let weir_height = weir_height_m / self.weir_height_unit_m;
-        let crest_coefficient = self.crest_constant + self.crest_factor * (-self.crest_decay * weir_height).exp();
+        self.crest_constant + self.crest_factor * (-self.crest_decay * weir_height).exp()
+    }
+
+    /// Clear liquid at a known froth density and Cb, m.
+    #[inline]
+    pub fn head_at_density_m(&self, phi: f64, crest_coefficient: f64, weir_height_m: f64, weir_load_m2_s: f64) -> f64 {
         let crest = crest_coefficient * (weir_load_m2_s / self.weir_load_unit_m2_s / phi).powf(self.crest_exponent);
         phi * (weir_height_m + crest * self.head_unit_m)
     }
