@@ -3,7 +3,7 @@
 use super::columns::{COLUMNS, COUNT, Cells, LoadRow, row};
 use super::open::MAX_FILE_BYTES;
 use super::quantity::{Sign, check_number, leading_number};
-use super::reader::{Sink, Span, nearest_help};
+use super::reader::{Sink, Span, nearest, nearest_help};
 use super::unit_expr::{Unit, parse_unit};
 use super::unit_table::name as dimension_name;
 
@@ -155,15 +155,15 @@ fn read_header(record: &csv::StringRecord, spans: &[Span], sink: &mut Sink) -> O
         columns.push(meaning(&name, unit, field, span, sink));
         names.push(name);
     }
+    let known: Vec<&str> = PLAIN.into_iter().chain(COLUMNS.iter().map(|column| column.name)).collect();
+    // A misspelt column has been reported as unknown, and is not also called missing.
+    let meant: Vec<&str> =
+        names.iter().filter(|name| !known.contains(&name.as_str())).filter_map(|name| nearest(name, &known)).collect();
+    let lacks = |name: &str| !names.iter().any(|typed| typed == name) && !meant.contains(&name);
     let missing: Vec<&str> = ["section", "stage"]
         .into_iter()
-        .filter(|name| !names.iter().any(|typed| typed == name))
-        .chain(
-            COLUMNS
-                .iter()
-                .filter(|column| column.required && !names.iter().any(|typed| typed == column.name))
-                .map(|column| column.example),
-        )
+        .filter(|name| lacks(name))
+        .chain(COLUMNS.iter().filter(|column| column.required && lacks(column.name)).map(|column| column.example))
         .collect();
     if missing.is_empty() {
         return Some(columns);

@@ -349,11 +349,12 @@ pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
             words.push(word);
         }
     }
-    let rest = words.len().saturating_sub(LONGEST_LIST);
-    if rest > 0 {
+    let all = words.len();
+    if all > LONGEST_LIST {
         words.sort_by_cached_key(|word| strsim::damerau_levenshtein(typed, word));
-        words.truncate(LONGEST_LIST);
+        words.truncate(NEAREST_OF_MANY);
     }
+    let rest = all - words.len();
     let list = if words.is_empty() { "none".to_owned() } else { words.join(", ") };
     let more = if rest > 0 { format!(" and {rest} more") } else { String::new() };
     match nearest(typed, &words) {
@@ -362,8 +363,10 @@ pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
     }
 }
 
-/// Of longer lists only so many words are shown.
+/// Longer lists are cut.
 const LONGEST_LIST: usize = 20;
+/// So many words are left of a long list.
+const NEAREST_OF_MANY: usize = 8;
 
 /// The nearest of the known words, if any is near enough to be meant.
 pub(crate) fn nearest<'a>(typed: &str, known: &[&'a str]) -> Option<&'a str> {

@@ -198,7 +198,8 @@ fn group(context: &mut Context<'_>, rows: Vec<LoadRow>, from: &Ingredients<'_>, 
             }
         }
     }
-    (sound && design).then(|| points.into_iter().map(|(name, sections, _)| (name, sections)).collect())
+    let complete = points.iter().all(|(_, sections, _)| sections.iter().all(|rows| !rows.is_empty()));
+    (sound && design && complete).then(|| points.into_iter().map(|(name, sections, _)| (name, sections)).collect())
 }
 
 /// A point and the factors on the design loads, if it has any.
