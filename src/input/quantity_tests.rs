@@ -23,7 +23,7 @@ fn units_of_the_trade_have_their_exact_factors() {
     close(si::<kind::Mass>("1 lb"), 0.453_592_37, 0.0);
     close(si::<kind::MassRate>("3600 lb/h"), 0.453_592_37, 1e-15);
     close(si::<kind::MassDensity>("1 lb/ft3"), 0.453_592_37 / 0.028_316_846_592, 1e-15);
-    close(si::<kind::Pressure>("1 psi"), 6894.757_293_168_361, 1e-15);
+    close(si::<kind::Pressure>("1 psi"), 6_894.757_293_168_361, 1e-15);
     close(si::<kind::Pressure>("1 inH2O"), 249.0889, 1e-6);
     close(si::<kind::Pressure>("1 inHg"), 3386.389, 2e-7);
     close(si::<kind::Pressure>("1 mmHg"), 133.3224, 2e-7);
