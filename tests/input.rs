@@ -363,6 +363,22 @@ fn a_table_that_is_too_large_is_refused() {
     assert!(input::open("case.toml", &large).is_err());
 }
 
+/// Sizes at which a careless search would take minutes or all memory; the run of the tests itself is the check.
+#[test]
+fn large_hostile_files_are_answered_soon() {
+    let (case, table) = good();
+    let long = "x".repeat(1_000_000);
+    for text in [format!("{long} = 1\n{case}"), case.replace("\"3.0 m\"", &format!("\"3.0 {long}\""))] {
+        assert!(check(&text, Some(&table)).unwrap_err().len() < 10_000);
+    }
+    let header = table.lines().next().unwrap();
+    let points: String = (0..19_000).map(|n| format!("top,p{n},1\",40,30,2.4,740,0.0085,0.23,18.5\n")).collect();
+    let text = check(&case, Some(&format!("{header}\n{points}"))).unwrap_err();
+    assert!(text.contains("more than 100 operating points"), "{text}");
+    let sections: String = (0..30_000).map(|n| format!("[[section]]\nname = \"s{n}\"\n")).collect();
+    assert!(check(&format!("{case}\n{sections}"), Some(&table)).is_err());
+}
+
 #[test]
 fn found_numbers_are_written_back_and_everything_else_stays() {
     let text = file("input/contract.toml");

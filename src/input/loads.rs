@@ -104,10 +104,13 @@ fn field_spans(text: &str, from: usize, delimiter: u8) -> Vec<Span> {
     let blank = rest.len() - rest.trim_start_matches(['\r', '\n']).len();
     let mut spans = Vec::new();
     let mut start = from + blank;
+    // As in CSV, a quote means something only in a field that begins with one.
+    let mut field_has_quotes = false;
     let mut quoted = false;
     for (offset, byte) in text.bytes().enumerate().skip(start) {
         match byte {
-            b'"' => quoted = !quoted,
+            b'"' if offset == start => (field_has_quotes, quoted) = (true, true),
+            b'"' if field_has_quotes => quoted = !quoted,
             b'\n' | b'\r' if !quoted => {
                 spans.push(trimmed(text, start..offset));
                 return spans;
@@ -115,6 +118,7 @@ fn field_spans(text: &str, from: usize, delimiter: u8) -> Vec<Span> {
             _ if byte == delimiter && !quoted => {
                 spans.push(trimmed(text, start..offset));
                 start = offset + 1;
+                field_has_quotes = false;
             }
             _ => {}
         }

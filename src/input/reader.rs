@@ -44,7 +44,10 @@ impl Sink {
         self.push(span, message.into(), label.into(), Some(help.into()));
     }
 
-    fn push(&mut self, span: Span, message: String, label: String, help: Option<String>) {
+    fn push(&mut self, span: Span, mut message: String, label: String, help: Option<String>) {
+        if message.chars().count() > LONGEST_MESSAGE {
+            message = message.chars().take(LONGEST_MESSAGE).chain("...".chars()).collect();
+        }
         self.items.push(Diagnostic { source: self.source, span, message, label, help });
     }
 }
@@ -351,7 +354,8 @@ pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
     }
     let all = words.len();
     if all > LONGEST_LIST {
-        words.sort_by_cached_key(|word| strsim::damerau_levenshtein(typed, word));
+        let start: String = typed.chars().take(LONGEST_WORD).collect();
+        words.sort_by_cached_key(|word| strsim::damerau_levenshtein(&start, word));
         words.truncate(NEAREST_OF_MANY);
     }
     let rest = all - words.len();
@@ -363,6 +367,10 @@ pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
     }
 }
 
+/// A message that repeats what was typed is cut at so many characters.
+const LONGEST_MESSAGE: usize = 500;
+/// Nothing is sought for words longer than this: the search takes their length times the known word's.
+const LONGEST_WORD: usize = 80;
 /// Longer lists are cut.
 const LONGEST_LIST: usize = 20;
 /// So many words are left of a long list.
@@ -370,6 +378,9 @@ const NEAREST_OF_MANY: usize = 8;
 
 /// The nearest of the known words, if any is near enough to be meant.
 pub(crate) fn nearest<'a>(typed: &str, known: &[&'a str]) -> Option<&'a str> {
+    if typed.len() > LONGEST_WORD {
+        return None;
+    }
     let lower = typed.to_lowercase();
     let scored = known.iter().map(|word| {
         let distance = strsim::damerau_levenshtein(&lower, &word.to_lowercase());

@@ -271,6 +271,9 @@ fn plain_digit(c: char) -> Option<char> {
 
 /// The known unit nearest to a mistyped one, if any is near.
 fn nearest_unit(word: &str, wanted: Option<Dimension>) -> Option<&'static str> {
+    if word.len() > 20 {
+        return None;
+    }
     let lower = word.to_lowercase();
     let fitting = |row: &&UnitRow| wanted.is_none_or(|dimension| row.dimension == dimension);
     if let Some(row) = UNITS.iter().filter(fitting).find(|row| row.symbol.to_lowercase() == lower) {
