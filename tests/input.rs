@@ -315,6 +315,28 @@ bottom,10,12,16,2.8,740,0.011,0.2,18
     assert!(case.reading_notes[1].contains("1.7000 kg/s"), "{:?}", case.reading_notes);
 }
 
+/// A wall that is closed at the bottom has nothing below it: each compartment then closes its own mass balance.
+#[test]
+fn a_wall_closed_at_a_head_has_sections_at_the_other_end_only() {
+    let (case, table) = good();
+    let without = |text: &str, name: &str| -> String {
+        let from = text.find(&format!("[[section]]\nname = \"{name}\"")).expect("the section exists");
+        let end = text[from..].find("\n\n").expect("a blank line follows") + from + 2;
+        format!("{}{}", &text[..from], &text[end..])
+    };
+    let rows =
+        |name: &str| -> String { table.lines().filter(|line| !line.starts_with(name)).collect::<Vec<_>>().join("\n") };
+    let closed = |reach: &str| case.replace("[wall]", &format!("[wall]\nreach = \"{reach}\""));
+    let top = check(&without(&closed("top"), "top"), Some(&rows("top"))).unwrap_or_else(|text| panic!("{text}"));
+    assert!(top.sections.iter().all(|section| section.place != Place::Above));
+    let leaving = without(&closed("bottom"), "bottom").replace("below stage", "leaving stage");
+    let bottom = check(&leaving.replace("vapour_share = 0.6", ""), Some(&rows("bottom")))
+        .unwrap_or_else(|text| panic!("{text}"));
+    // Feed side, last stage: vapour in = vapour out + liquid out - liquid from the stage above, t/h of the table.
+    let last = bottom.points[0].loads[1].last().unwrap().vapour_flow.si();
+    assert_relative_eq!(last, (24.0 + 39.0 - 20.0) / 3.6, max_relative = 1e-13);
+}
+
 #[test]
 fn a_table_elsewhere_is_never_named_to_the_caller() {
     let (case, table) = good();
@@ -339,6 +361,22 @@ fn a_table_that_is_too_large_is_refused() {
     let large = " ".repeat(input::MAX_FILE_BYTES + 1);
     assert!(check(&case, Some(&large)).unwrap_err().contains("at most"));
     assert!(input::open("case.toml", &large).is_err());
+}
+
+/// Sizes at which a careless search would take minutes or all memory; the run of the tests itself is the check.
+#[test]
+fn large_hostile_files_are_answered_soon() {
+    let (case, table) = good();
+    let long = "x".repeat(1_000_000);
+    for text in [format!("{long} = 1\n{case}"), case.replace("\"3.0 m\"", &format!("\"3.0 {long}\""))] {
+        assert!(check(&text, Some(&table)).unwrap_err().len() < 10_000);
+    }
+    let header = table.lines().next().unwrap();
+    let points: String = (0..19_000).map(|n| format!("top,p{n},1\",40,30,2.4,740,0.0085,0.23,18.5\n")).collect();
+    let text = check(&case, Some(&format!("{header}\n{points}"))).unwrap_err();
+    assert!(text.contains("more than 100 operating points"), "{text}");
+    let sections: String = (0..30_000).map(|n| format!("[[section]]\nname = \"s{n}\"\n")).collect();
+    assert!(check(&format!("{case}\n{sections}"), Some(&table)).is_err());
 }
 
 #[test]

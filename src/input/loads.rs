@@ -3,7 +3,7 @@
 use super::columns::{COLUMNS, COUNT, Cells, LoadRow, row};
 use super::open::MAX_FILE_BYTES;
 use super::quantity::{Sign, check_number, leading_number};
-use super::reader::{Sink, Span, nearest_help};
+use super::reader::{Sink, Span, nearest, nearest_help};
 use super::unit_expr::{Unit, parse_unit};
 use super::unit_table::name as dimension_name;
 
@@ -104,10 +104,13 @@ fn field_spans(text: &str, from: usize, delimiter: u8) -> Vec<Span> {
     let blank = rest.len() - rest.trim_start_matches(['\r', '\n']).len();
     let mut spans = Vec::new();
     let mut start = from + blank;
+    // As in CSV, a quote means something only in a field that begins with one.
+    let mut field_has_quotes = false;
     let mut quoted = false;
     for (offset, byte) in text.bytes().enumerate().skip(start) {
         match byte {
-            b'"' => quoted = !quoted,
+            b'"' if offset == start => (field_has_quotes, quoted) = (true, true),
+            b'"' if field_has_quotes => quoted = !quoted,
             b'\n' | b'\r' if !quoted => {
                 spans.push(trimmed(text, start..offset));
                 return spans;
@@ -115,6 +118,7 @@ fn field_spans(text: &str, from: usize, delimiter: u8) -> Vec<Span> {
             _ if byte == delimiter && !quoted => {
                 spans.push(trimmed(text, start..offset));
                 start = offset + 1;
+                field_has_quotes = false;
             }
             _ => {}
         }
@@ -155,15 +159,15 @@ fn read_header(record: &csv::StringRecord, spans: &[Span], sink: &mut Sink) -> O
         columns.push(meaning(&name, unit, field, span, sink));
         names.push(name);
     }
+    let known: Vec<&str> = PLAIN.into_iter().chain(COLUMNS.iter().map(|column| column.name)).collect();
+    // A misspelt column has been reported as unknown, and is not also called missing.
+    let meant: Vec<&str> =
+        names.iter().filter(|name| !known.contains(&name.as_str())).filter_map(|name| nearest(name, &known)).collect();
+    let lacks = |name: &str| !names.iter().any(|typed| typed == name) && !meant.contains(&name);
     let missing: Vec<&str> = ["section", "stage"]
         .into_iter()
-        .filter(|name| !names.iter().any(|typed| typed == name))
-        .chain(
-            COLUMNS
-                .iter()
-                .filter(|column| column.required && !names.iter().any(|typed| typed == column.name))
-                .map(|column| column.example),
-        )
+        .filter(|name| lacks(name))
+        .chain(COLUMNS.iter().filter(|column| column.required && lacks(column.name)).map(|column| column.example))
         .collect();
     if missing.is_empty() {
         return Some(columns);

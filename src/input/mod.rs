@@ -17,6 +17,8 @@ mod loads;
 mod lower;
 mod open;
 mod quantity;
+#[cfg(test)]
+mod quantity_tests;
 mod raw;
 mod reader;
 mod schema;

@@ -129,6 +129,19 @@ impl Opened {
         self.table.as_deref()
     }
 
+    /// Names of the packings that the internals refer to, known or not, in the order of the file, each once: a catalogue
+    /// with these is enough for [`Opened::check`] (one with more gives better help on a misspelt name).
+    pub fn packings(&self) -> Vec<&str> {
+        let mut names: Vec<&str> = Vec::new();
+        let internals = self.raw.internals.as_ref().map(|named| named.0.as_slice()).unwrap_or_default();
+        for name in internals.iter().filter_map(|(_, internals)| internals.packing.as_ref()) {
+            if !names.contains(&name.value.as_str()) {
+                names.push(&name.value);
+            }
+        }
+        names
+    }
+
     /// Checks the whole case. `table` is the text of the file named by [`Opened::table`]; without one, a case that names
     /// a table is reported as lacking it.
     ///

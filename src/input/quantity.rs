@@ -1,6 +1,6 @@
 //! A number with its unit, from text: what kinds there are, and how one is read.
 
-use super::unit_expr::parse_unit;
+use super::unit_expr::parse_unit_of;
 use super::unit_table::{Dimension, name};
 use crate::engine::units::{self, Si};
 use std::ops::Range;
@@ -145,7 +145,7 @@ pub(crate) fn parse<K: Kind>(text: &str, sign: Sign) -> Result<f64, QuantityErro
         let message = format!("\"{}\" has no unit", text.trim());
         return Err(QuantityError { span: 0..text.len(), message, label: "unit missing".to_owned(), help: expected() });
     }
-    let unit = parse_unit(unit_text).map_err(|error| QuantityError {
+    let unit = parse_unit_of(unit_text, Some(K::DIMENSION)).map_err(|error| QuantityError {
         span: unit_from + error.span.start..unit_from + error.span.end,
         message: error.message,
         label: "in this unit".to_owned(),
@@ -227,8 +227,12 @@ pub(crate) fn leading_number(text: &str) -> Result<(f64, usize), (Range<usize>, 
         return Err((whole_span, format!("{message}; the decimal sign is a point, and thousands are not grouped")));
     }
     let written = unsigned.get(..length).unwrap_or_default();
+    let mantissa = written.split(['e', 'E']).next().unwrap_or_default();
+    let not_zero = mantissa.contains(|c: char| ('1'..='9').contains(&c));
     match written.parse::<f64>() {
-        Ok(number) if number.is_finite() => Ok((if negative { -number } else { number }, end)),
+        Ok(number) if number.is_finite() && (number != 0.0 || !not_zero) => {
+            Ok((if negative { -number } else { number }, end))
+        }
         _ => Err((start..end, format!("\"{written}\" is not a number that can be worked with"))),
     }
 }

@@ -44,7 +44,10 @@ impl Sink {
         self.push(span, message.into(), label.into(), Some(help.into()));
     }
 
-    fn push(&mut self, span: Span, message: String, label: String, help: Option<String>) {
+    fn push(&mut self, span: Span, mut message: String, label: String, help: Option<String>) {
+        if message.chars().count() > LONGEST_MESSAGE {
+            message = message.chars().take(LONGEST_MESSAGE).chain("...".chars()).collect();
+        }
         self.items.push(Diagnostic { source: self.source, span, message, label, help });
     }
 }
@@ -349,11 +352,13 @@ pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
             words.push(word);
         }
     }
-    let rest = words.len().saturating_sub(LONGEST_LIST);
-    if rest > 0 {
-        words.sort_by_cached_key(|word| strsim::damerau_levenshtein(typed, word));
-        words.truncate(LONGEST_LIST);
+    let all = words.len();
+    if all > LONGEST_LIST {
+        let start: String = typed.chars().take(LONGEST_WORD).collect();
+        words.sort_by_cached_key(|word| strsim::damerau_levenshtein(&start, word));
+        words.truncate(NEAREST_OF_MANY);
     }
+    let rest = all - words.len();
     let list = if words.is_empty() { "none".to_owned() } else { words.join(", ") };
     let more = if rest > 0 { format!(" and {rest} more") } else { String::new() };
     match nearest(typed, &words) {
@@ -362,11 +367,20 @@ pub(crate) fn nearest_help(typed: &str, known: &[&str], what: &str) -> String {
     }
 }
 
-/// Of longer lists only so many words are shown.
+/// A message that repeats what was typed is cut at so many characters.
+const LONGEST_MESSAGE: usize = 500;
+/// Nothing is sought for words longer than this: the search takes their length times the known word's.
+const LONGEST_WORD: usize = 80;
+/// Longer lists are cut.
 const LONGEST_LIST: usize = 20;
+/// So many words are left of a long list.
+const NEAREST_OF_MANY: usize = 8;
 
 /// The nearest of the known words, if any is near enough to be meant.
 pub(crate) fn nearest<'a>(typed: &str, known: &[&'a str]) -> Option<&'a str> {
+    if typed.len() > LONGEST_WORD {
+        return None;
+    }
     let lower = typed.to_lowercase();
     let scored = known.iter().map(|word| {
         let distance = strsim::damerau_levenshtein(&lower, &word.to_lowercase());

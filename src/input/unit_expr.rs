@@ -33,7 +33,12 @@ const DEPTH: usize = 8;
 
 /// Works a unit out. The text must not be blank.
 pub(crate) fn parse_unit(text: &str) -> Result<Unit, UnitError> {
-    let mut parser = Parser { text, at: 0, affine: None, factors: 0 };
+    parse_unit_of(text, None)
+}
+
+/// The same, where the dimension that is wanted is known: a misspelt unit is then taken for one of that dimension.
+pub(crate) fn parse_unit_of(text: &str, wanted: Option<Dimension>) -> Result<Unit, UnitError> {
+    let mut parser = Parser { text, at: 0, affine: None, factors: 0, wanted };
     let unit = parser.expression(0)?;
     parser.skip_space();
     if parser.at < text.len() {
@@ -61,6 +66,7 @@ struct Parser<'a> {
     at: usize,
     affine: Option<&'static UnitRow>,
     factors: usize,
+    wanted: Option<Dimension>,
 }
 
 impl Parser<'_> {
@@ -183,7 +189,9 @@ impl Parser<'_> {
             return Ok(row);
         }
         let refused = REFUSED.iter().find(|(symbol, _)| *symbol == word).map(|(_, why)| (*why).to_owned());
-        let help = refused.or_else(|| nearest_unit(&word).map(|near| format!("did you mean \"{near}\"?")));
+        let alone = self.text.trim() == word;
+        let wanted = self.wanted.filter(|_| alone);
+        let help = refused.or_else(|| nearest_unit(&word, wanted).map(|near| format!("did you mean \"{near}\"?")));
         Err(self.error(span, format!("\"{word}\" is not a unit that is known here"), help))
     }
 
@@ -262,13 +270,17 @@ fn plain_digit(c: char) -> Option<char> {
 }
 
 /// The known unit nearest to a mistyped one, if any is near.
-fn nearest_unit(word: &str) -> Option<&'static str> {
+fn nearest_unit(word: &str, wanted: Option<Dimension>) -> Option<&'static str> {
+    if word.len() > 20 {
+        return None;
+    }
     let lower = word.to_lowercase();
-    if let Some(row) = UNITS.iter().find(|row| row.symbol.to_lowercase() == lower) {
+    let fitting = |row: &&UnitRow| wanted.is_none_or(|dimension| row.dimension == dimension);
+    if let Some(row) = UNITS.iter().filter(fitting).find(|row| row.symbol.to_lowercase() == lower) {
         return Some(row.symbol);
     }
     let far = if word.chars().count() <= 2 { 1 } else { 2 };
-    let near = UNITS.iter().map(|row| (strsim::damerau_levenshtein(row.symbol, word), row.symbol));
+    let near = UNITS.iter().filter(fitting).map(|row| (strsim::damerau_levenshtein(row.symbol, word), row.symbol));
     near.filter(|(distance, symbol)| *distance <= far && symbol.len() > *distance)
         .min_by_key(|(distance, _)| *distance)
         .map(|(_, symbol)| symbol)

@@ -3,6 +3,7 @@
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::input::quantity::{self, Kind, Sign};
 use crate::input::reader::{At, FromTable, List, Quantity, Sink, Span, nearest_help};
+use std::collections::BTreeSet;
 
 /// The lowering of one case.
 pub(crate) struct Context<'a> {
@@ -122,8 +123,9 @@ impl Context<'_> {
 
     /// Says which names occur twice. `names` without those that could not be read.
     pub(crate) fn unique(&mut self, names: &[(String, Span)], what: &str) {
-        for (place, (name, span)) in names.iter().enumerate() {
-            if names.iter().take(place).any(|(earlier, _)| earlier == name) {
+        let mut earlier: BTreeSet<&str> = BTreeSet::new();
+        for (name, span) in names {
+            if !earlier.insert(name) {
                 let message = format!("there are two {what} named \"{name}\"");
                 self.sink.help(span.clone(), message, "used before", "give each a name of its own");
             }

@@ -89,7 +89,7 @@ pub(super) fn internals(context: &mut Context<'_>, raw: &Named<RawInternals>) ->
             let kind = one_kind(context, name, raw);
             let lowered = kind.and_then(|kind| {
                 foreign_keys(context, name, raw, kind);
-                lower_kind(context, raw, kind)
+                lower_kind(context, name, raw, kind)
             });
             NamedInternals { name: name.value.clone(), kind, lowered }
         })
@@ -104,11 +104,11 @@ fn one_kind(context: &mut Context<'_>, name: &At<String>, raw: &RawInternals) ->
     context.choice(typed, "kind of internals", &KINDS)
 }
 
-fn lower_kind(context: &mut Context<'_>, raw: &RawInternals, kind: Kind) -> Option<InternalsKind> {
+fn lower_kind(context: &mut Context<'_>, name: &At<String>, raw: &RawInternals, kind: Kind) -> Option<InternalsKind> {
     match kind {
         Kind::Sieve | Kind::Valve => tray::tray(context, raw, kind == Kind::Valve).map(InternalsKind::Tray),
-        Kind::Random => packing::packing(context, raw, PackingKind::Random).map(InternalsKind::Packing),
-        Kind::Structured => packing::packing(context, raw, PackingKind::Structured).map(InternalsKind::Packing),
+        Kind::Random => packing::packing(context, name, raw, PackingKind::Random).map(InternalsKind::Packing),
+        Kind::Structured => packing::packing(context, name, raw, PackingKind::Structured).map(InternalsKind::Packing),
         Kind::Declared => declared::declared(context, raw).map(InternalsKind::Declared),
     }
 }

@@ -4,7 +4,7 @@ use super::context::{Allowed, Context, INNER_FRACTION, POSITIVE};
 use crate::engine::correlation::packing::{BilletSchultesConstants, Material, Packing, PackingKind};
 use crate::input::quantity::Sign::Positive;
 use crate::input::raw::{RawBilletSchultes, RawInternals};
-use crate::input::reader::{At, FromTable, List};
+use crate::input::reader::{At, FromTable, List, nearest_help};
 
 const CONSTANT: Allowed = Allowed { test: |x| x.abs() <= 1e6, words: "between -1e6 and 1e6" };
 /// Keys that are constants of a packing.
@@ -21,15 +21,20 @@ const CONSTANTS: [&str; 9] = [
 ];
 
 /// A random or structured packing.
-pub(super) fn packing(context: &mut Context<'_>, raw: &RawInternals, kind: PackingKind) -> Option<Packing> {
+pub(super) fn packing(
+    context: &mut Context<'_>,
+    name: &At<String>,
+    raw: &RawInternals,
+    kind: PackingKind,
+) -> Option<Packing> {
     let constants_stated = raw.typed().iter().any(|(key, _)| CONSTANTS.contains(&key.as_str()));
     let start = match &raw.packing {
         Some(name) => entry(context, name, kind),
         None if constants_stated => Some(blank(kind)),
         None => {
             let help = format!(
-                "add packing = \"...\" ({}), or constants such as packing_factor = \"66 1/m\"",
-                context.catalogue.packing_names().join(", ")
+                "add packing = \"...\" ({}) or constants such as packing_factor = \"66 1/m\"",
+                nearest_help(&name.value, &context.catalogue.packing_names(), "packings")
             );
             let span = super::context::header(context.text, raw.span.clone());
             context.sink.help(

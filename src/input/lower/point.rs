@@ -15,6 +15,8 @@ use crate::input::reader::{FromTable, Sink, Span};
 
 /// Name of the point that always exists.
 pub(super) const DESIGN: &str = "design";
+/// More operating points than this are a column mistaken for another.
+const MAX_POINTS: usize = 100;
 const FACTOR: Allowed = Allowed { test: |x| x > 0.0 && x <= 100.0, words: "above 0 and at most 100" };
 
 /// What a row of the loads is.
@@ -169,6 +171,12 @@ fn group(context: &mut Context<'_>, rows: Vec<LoadRow>, from: &Ingredients<'_>, 
             last = Some(here);
         }
         if !points.iter().any(|(name, ..)| *name == load.point) {
+            if points.len() >= MAX_POINTS {
+                let sink = if table { &mut context.table_sink } else { &mut context.sink };
+                let message = format!("the loads name more than {MAX_POINTS} operating points");
+                sink.help(load.span.clone(), message, "one point too many", "is this the column of the point?");
+                return None;
+            }
             points.push((load.point.clone(), vec![Vec::new(); from.sections.len()], load.span.clone()));
         }
         let slot = points.iter_mut().find(|(name, ..)| *name == load.point);
@@ -198,7 +206,8 @@ fn group(context: &mut Context<'_>, rows: Vec<LoadRow>, from: &Ingredients<'_>, 
             }
         }
     }
-    (sound && design).then(|| points.into_iter().map(|(name, sections, _)| (name, sections)).collect())
+    let complete = points.iter().all(|(_, sections, _)| sections.iter().all(|rows| !rows.is_empty()));
+    (sound && design && complete).then(|| points.into_iter().map(|(name, sections, _)| (name, sections)).collect())
 }
 
 /// A point and the factors on the design loads, if it has any.

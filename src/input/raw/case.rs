@@ -31,7 +31,7 @@ raw_table! {
     #[schemars(required)]
     internals "internals": Named<RawInternals>,
     /// Beds and tray stacks; in each place from top to bottom.
-    #[schemars(required, extend("minItems" = 4))]
+    #[schemars(required, extend("minItems" = 3))]
     section "section": Many<RawSection>,
     /// Anything else that the vapour passes.
     device "device": Many<RawDevice>,
