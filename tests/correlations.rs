@@ -4,7 +4,7 @@ use chordwall::engine::correlation::catalogue::Catalogue;
 use chordwall::input::builtin;
 
 fn catalogue() -> Catalogue {
-    builtin::catalogue_for(&[]).unwrap_or_else(|error| panic!("{error}"))
+    builtin::catalogue().unwrap_or_else(|error| panic!("{error}"))
 }
 
 fn outside(id: &str, output: &str, at: &[(&str, f64)]) -> Vec<String> {

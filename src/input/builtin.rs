@@ -2,7 +2,8 @@
 
 use super::correlation_file::{self, Content, CorrelationFileError, is_packing_table, split_table};
 use crate::engine::correlation::catalogue::{Catalogue, PackingEntry};
-use crate::engine::correlation::record::{Record, Task};
+use crate::engine::correlation::form::Form;
+use crate::engine::correlation::record::Record;
 use crate::engine::error::EngineError;
 use std::fmt;
 use std::path::Path;
@@ -129,14 +130,28 @@ pub fn catalogue_with(user_files: &[(String, String)]) -> Result<Catalogue, Cata
     gathered.finish()
 }
 
-/// All built-in correlations without their check points, and the packings of these names: what one run needs.
+/// Forms that packings need; all others are of trays.
+const PACKING_FORMS: [Form; 5] =
+    [Form::GpdLater, Form::GpdOlder, Form::FloodPressureDrop, Form::Stichlmair, Form::WettingMinimum];
+
+/// What one case needs: the correlations of trays, of packings, or of both, without their check points, and these packings.
 ///
 /// # Errors
-/// [`CatalogueError::NoPacking`] for an unknown name; else as [`catalogue`].
-pub fn catalogue_for(packings: &[&str]) -> Result<Catalogue, CatalogueError> {
-    let ids: Vec<&str> = FILES.iter().filter(|(_, text)| !is_packing_table(text)).map(|(id, _)| *id).collect();
+/// As [`catalogue_of`].
+pub fn catalogue_for_case(trays: bool, packings: &[&str]) -> Result<Catalogue, CatalogueError> {
+    let packing_forms = PACKING_FORMS.map(|form| format!("form = \"{}\"", form.shape().name));
+    let wanted = |text: &str| {
+        let of_packings =
+            text.lines().take(FORM_WITHIN_LINES).any(|line| packing_forms.iter().any(|form| line == form));
+        if of_packings { !packings.is_empty() } else { trays }
+    };
+    let ids: Vec<&str> =
+        FILES.iter().filter(|(_, text)| !is_packing_table(text) && wanted(text)).map(|(id, _)| *id).collect();
     catalogue_of(&ids, packings)
 }
+
+/// A file states its form within its first lines.
+const FORM_WITHIN_LINES: usize = 8;
 
 /// The built-in correlations of these identifiers without their check points, and the packings of these names.
 ///
@@ -162,13 +177,6 @@ pub fn catalogue_of(ids: &[&str], packings: &[&str]) -> Result<Catalogue, Catalo
     gathered.finish()
 }
 
-/// Identifiers of the built-in correlations that make up a method for a task, found without reading them.
-pub fn ids_serving(task: Task, method: &str) -> Vec<&'static str> {
-    let entry = format!("{{ task = \"{}\", method = \"{method}\" }}", task.name());
-    let serves = |text: &str| text.lines().take_while(|line| *line != "[source]").any(|line| line.contains(&entry));
-    FILES.iter().filter(|(_, text)| serves(text)).map(|(id, _)| *id).collect()
-}
-
 /// Names of the built-in packings, in the order of the tables.
 pub fn packing_names() -> Vec<&'static str> {
     tables().flat_map(|(_, text)| split_table(text).entries).map(|(name, ..)| name).collect()
@@ -181,6 +189,7 @@ fn tables() -> impl Iterator<Item = &'static (&'static str, &'static str)> {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::engine::correlation::record::Task;
 
     #[test]
     fn files_are_those_of_the_directory() {
@@ -199,7 +208,7 @@ mod tests {
     #[test]
     fn one_run_gets_the_same_records_as_the_whole_without_check_points() {
         let whole = catalogue().unwrap_or_else(|error| panic!("{error}"));
-        let run = catalogue_for(&["sheet 250/45", "slotted metal ring 50"]).unwrap();
+        let run = catalogue_for_case(true, &["sheet 250/45", "slotted metal ring 50"]).unwrap();
         assert_eq!(run.packing_names(), ["sheet 250/45", "slotted metal ring 50"]);
         assert_eq!(run.packing("sheet 250/45"), whole.packing("sheet 250/45"));
         assert_eq!(whole.packing_names(), packing_names());
@@ -213,6 +222,18 @@ mod tests {
     }
 
     #[test]
+    fn a_case_gets_only_the_kinds_of_records_it_needs() {
+        let ids = |trays: bool, packings: &[&str]| -> Vec<String> {
+            catalogue_for_case(trays, packings).unwrap().records().iter().map(|r| r.id.clone()).collect()
+        };
+        let (trays, packings) = (ids(true, &[]), ids(false, &["sheet 250/45"]));
+        assert!(trays.contains(&"fair-1961-capacity".to_owned()) && !trays.iter().any(|id| packings.contains(id)));
+        assert!(packings.contains(&"stichlmair-1989-pressure-drop".to_owned()));
+        assert_eq!(trays.len() + packings.len(), catalogue().unwrap().records().len());
+        assert!(ids(false, &[]).is_empty());
+    }
+
+    #[test]
     fn every_default_method_of_a_case_is_served() {
         let whole = catalogue().unwrap();
         assert_eq!(whole.methods(Task::TrayFlood), ["fair"]);
@@ -222,26 +243,16 @@ mod tests {
     }
 
     #[test]
-    fn ids_found_without_reading_are_those_of_the_records() {
-        let whole = catalogue().unwrap();
-        for task in Task::ALL {
-            assert!(!whole.methods(task).is_empty());
-            for method in whole.methods(task) {
-                let ids: Vec<&str> = whole.records_of(task, method).iter().map(|record| record.id.as_str()).collect();
-                assert_eq!(ids_serving(task, method), ids);
-            }
-            assert!(ids_serving(task, "nobody").is_empty());
-        }
-    }
-
-    #[test]
     fn unknown_names_are_named() {
         assert_eq!(catalogue_of(&["nobody-1900"], &[]), Err(CatalogueError::NoRecord("nobody-1900".to_owned())));
         assert_eq!(
             catalogue_of(&["packings-random"], &[]),
             Err(CatalogueError::NoRecord("packings-random".to_owned()))
         );
-        assert_eq!(catalogue_for(&["sheet 999/45"]), Err(CatalogueError::NoPacking("sheet 999/45".to_owned())));
+        assert_eq!(
+            catalogue_for_case(false, &["sheet 999/45"]),
+            Err(CatalogueError::NoPacking("sheet 999/45".to_owned()))
+        );
     }
 
     #[test]

@@ -142,6 +142,12 @@ impl Opened {
         names
     }
 
+    /// True if any internals are trays.
+    pub fn has_trays(&self) -> bool {
+        let internals = self.raw.internals.as_ref().map(|named| named.0.as_slice()).unwrap_or_default();
+        internals.iter().filter_map(|(_, internals)| internals.kind.as_ref()).any(|kind| kind.value.ends_with("tray"))
+    }
+
     /// Checks the whole case. `table` is the text of the file named by [`Opened::table`]; without one, a case that names
     /// a table is reported as lacking it.
     ///

@@ -8,7 +8,7 @@ use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::design::work;
 use crate::engine::result::Answer;
 use crate::engine::units::Length;
-use crate::input::{Found, builtin, open, write_back};
+use crate::input::{Found, Opened, builtin, open, write_back};
 use crate::report::model::{Meta, Report, Show};
 use crate::report::{csv, json, markdown, terminal};
 use sha2::{Digest, Sha256};
@@ -71,14 +71,33 @@ fn read(args: &AnswerArgs) -> Result<Read, Stop> {
     let name = files::name_of(&args.case);
     let opened = open(&name, &text).map_err(Stop::Input)?;
     let table = opened.table().map(str::to_owned).map(|table| files::read_beside(&args.case, &table)).transpose()?;
-    let catalogue = catalogue(args.correlations.as_deref())?;
-    let case = opened.check(table.as_deref(), &catalogue).map_err(Stop::Input)?;
+    let (case, catalogue) = checked(&name, &text, opened, table.as_deref(), args.correlations.as_deref())?;
     let mut hash = Sha256::new();
     hash.update(text.as_bytes());
     hash.update(table.as_deref().unwrap_or_default().as_bytes());
     let input_sha256 = hash.finalize().iter().map(|byte| format!("{byte:02x}")).collect();
     let meta = Meta { version: env!("CARGO_PKG_VERSION").to_owned(), input_sha256, file: name };
     Ok(Read { text, case, catalogue, meta })
+}
+
+/// The checked case with the correlations it needs. Only those are read: a message about a name that is not among them is made
+/// again with all of them, so that it can say which name would be right.
+fn checked(
+    name: &str,
+    text: &str,
+    opened: Opened,
+    table: Option<&str>,
+    dir: Option<&Path>,
+) -> Result<(Case, Catalogue), Stop> {
+    if dir.is_none()
+        && let Ok(catalogue) = builtin::catalogue_for_case(opened.has_trays(), &opened.packings())
+        && let Ok(case) = opened.check(table, &catalogue)
+    {
+        return Ok((case, catalogue));
+    }
+    let catalogue = catalogue(dir)?;
+    let case = open(name, text).and_then(|opened| opened.check(table, &catalogue)).map_err(Stop::Input)?;
+    Ok((case, catalogue))
 }
 
 /// The built-in correlations, and the user's beside them.
