@@ -333,3 +333,7 @@ impl TrayFigures {
         }
     }
 }
+
+#[cfg(test)]
+#[path = "half_moon_test.rs"]
+mod half_moon_test;
