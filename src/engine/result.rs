@@ -64,8 +64,10 @@ pub struct GovernedBy {
     pub point: String,
     /// Least diameter by that criterion.
     pub diameter: Length,
-    /// The next one in words: criterion, section, point, diameter; empty if there is none.
+    /// The next one in words: criterion, section, point; empty if there is none.
     pub runner_up: String,
+    /// About the least diameter by that one.
+    pub runner_up_diameter: Option<Length>,
     /// The shell's diameter less the least one (negative if the given shell is too small).
     pub slack: Length,
 }

@@ -30,7 +30,10 @@ pub fn document(case: &Case, answer: &Answer, meta: &Meta, show: Show) -> Value 
                 "criterion": governed.criterion,
                 "section": governed.section,
                 "point": governed.point,
-                "runner_up": governed.runner_up,
+                "runner_up": governed.runner_up_diameter.map_or_else(
+                    || governed.runner_up.clone(),
+                    |d| format!("{}, about {:.3} m", governed.runner_up, d.si()),
+                ),
                 "slack_m": governed.slack.si(),
             },
         },

@@ -2,7 +2,7 @@
 
 use crate::engine::findings::{Amount, Criterion};
 use crate::engine::units::{
-    Area, Length, Pressure, PressureGradient, STANDARD_GRAVITY_M_S2, Si, Time, Velocity, WeirLoad,
+    Area, Length, MassRate, Pressure, PressureGradient, STANDARD_GRAVITY_M_S2, Si, Time, Velocity, WeirLoad,
 };
 
 /// Which units a person sees.
@@ -89,6 +89,14 @@ impl Display {
         }
     }
 
+    /// A mass flow.
+    pub fn mass_rate(self, rate: MassRate) -> String {
+        match self {
+            Self::Si => with(rate.si() * 3.6, 4, "t/h"),
+            Self::Us => with(rate.si() * 3600.0 / 0.45359237, 5, "lb/h"),
+        }
+    }
+
     /// A velocity.
     pub fn velocity(self, velocity: Velocity) -> String {
         match self {
@@ -113,12 +121,20 @@ impl Display {
         }
     }
 
-    /// An F-factor given in Pa^0.5.
+    /// An F-factor given in Pa^0.5, as a bare number in [`Display::f_factor_unit`], which is too long for a cell.
     pub fn f_factor(self, root_pascal: f64) -> String {
         match self {
-            Self::Si => with(root_pascal, 3, "Pa^0.5"),
+            Self::Si => significant(root_pascal, 3),
             // (ft/s)(lb/ft3)^0.5 in Pa^0.5.
-            Self::Us => with(root_pascal / (FOOT_M * (0.45359237 / FOOT_M.powi(3)).sqrt()), 3, "ft/s(lb/ft3)^.5"),
+            Self::Us => significant(root_pascal / (FOOT_M * (0.45359237 / FOOT_M.powi(3)).sqrt()), 3),
+        }
+    }
+
+    /// Unit of [`Display::f_factor`].
+    pub fn f_factor_unit(self) -> &'static str {
+        match self {
+            Self::Si => "Pa^0.5",
+            Self::Us => "(ft/s)(lb/ft3)^0.5",
         }
     }
 
@@ -167,7 +183,7 @@ mod tests {
         assert_eq!(Display::Us.weir_load(WeirLoad::from_si(8.942 / 3600.0)), "1.00 gpm/in");
         assert_eq!(Display::Us.liquid_load(Velocity::from_si(0.0679)), "100 gpm/ft2");
         assert_eq!(Display::Us.gradient(PressureGradient::from_si(817.22)), "1.00 inH2O/ft");
-        assert_eq!(Display::Us.f_factor(1.2199), "1.00 ft/s(lb/ft3)^.5");
+        assert_eq!(Display::Us.f_factor(1.2199), "1.00");
         assert_eq!(Display::Us.pressure(Pressure::from_si(6894.757)), "1.000 psi");
     }
 }

@@ -61,7 +61,11 @@ pub fn remarks(answer: &Answer, display: Display) -> Vec<String> {
         inert(&governed.point),
         display.length(governed.diameter),
         display.small_length(governed.slack, false),
-        if governed.runner_up.is_empty() { String::new() } else { format!(" Next: {}.", inert(&governed.runner_up)) }
+        governed.runner_up_diameter.map_or_else(String::new, |d| format!(
+            " Next: {}, about {}.",
+            inert(&governed.runner_up),
+            display.length(d)
+        ))
     )];
     let balance = &answer.balance;
     out.push(match (&balance.absent_because, balance.pressure_drop) {
@@ -179,7 +183,7 @@ pub fn sections(answer: &Answer, display: Display) -> Table {
         })
         .collect();
     table(
-        "Sections",
+        &format!("Sections (F in {}, X the flow parameter)", display.f_factor_unit()),
         &["section", "internals", "area", "flood", "actual", "stage", "F", "X", "friction", "in range"],
         rows,
         2,
@@ -241,8 +245,8 @@ pub fn stages(section: &SectionResult, display: Display) -> Table {
         .map(|r| {
             vec![
                 inert(&r.stage),
-                format!("{:.3}", r.vapour_flow.si() * 3.6),
-                format!("{:.3}", r.liquid_flow.si() * 3.6),
+                display.mass_rate(r.vapour_flow),
+                display.mass_rate(r.liquid_flow),
                 percent(r.flood),
                 display.f_factor(r.f_factor.root_pascal()),
                 display.velocity(r.capacity_factor),
@@ -253,8 +257,8 @@ pub fn stages(section: &SectionResult, display: Display) -> Table {
         })
         .collect();
     table(
-        &format!("Stages of \"{}\"", inert(&section.name)),
-        &["stage", "vapour t/h", "liquid t/h", "flood", "F", "C", "X", "liquid load", "friction"],
+        &format!("Stages of \"{}\" (F in {}, X the flow parameter)", inert(&section.name), display.f_factor_unit()),
+        &["stage", "vapour", "liquid", "flood", "F", "C", "X", "liquid load", "friction"],
         rows,
         1,
     )

@@ -154,13 +154,15 @@ fn governed_by(model: &Model<'_>, sized: &Sized) -> GovernedBy {
             point: String::new(),
             diameter: Length::from_si(0.0),
             runner_up: String::new(),
+            runner_up_diameter: None,
             slack: Length::from_si(0.0),
         };
     };
     let runner_up = candidates.iter().find(|(_, _, m)| m.section != margin.section || m.criterion != margin.criterion);
-    let runner_up = runner_up.map_or_else(String::new, |(own_m, _, m)| {
+    let runner_up_diameter = runner_up.map(|(own_m, _, _)| Length::from_si(*own_m));
+    let runner_up = runner_up.map_or_else(String::new, |(_, _, m)| {
         let (section, point) = name(m);
-        format!("{} of \"{section}\" at \"{point}\", about {own_m:.3} m", m.criterion.name())
+        format!("{} of \"{section}\" at \"{point}\"", m.criterion.name())
     });
     let (section, point) = name(margin);
     GovernedBy {
@@ -169,6 +171,7 @@ fn governed_by(model: &Model<'_>, sized: &Sized) -> GovernedBy {
         point,
         diameter: Length::from_si(least_m),
         runner_up,
+        runner_up_diameter,
         slack: Length::from_si(stands_m - least_m),
     }
 }

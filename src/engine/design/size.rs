@@ -99,8 +99,13 @@ pub(crate) fn size(model: &Model<'_>, placer: &Placer<'_, '_>) -> EngineResult<S
     }
     let step_m = shell.step.si();
     // A hair below a multiple is that multiple: rounding noise must not cost a step.
-    let rounded_m = least_m.map(|least| (least / step_m - 1e-9).ceil() * step_m);
+    let rounded_m = least_m.map(|least| to_nanometre((least / step_m - 1e-9).ceil() * step_m));
     Ok(Sized { diameters_m: with_given(rounded_m), needs, by_column })
+}
+
+/// 34 steps of 0.1 m are 3.4 m, not the double beside it.
+fn to_nanometre(length_m: f64) -> f64 {
+    (length_m * 1e9).round() / 1e9
 }
 
 /// What one part needs.
