@@ -33,11 +33,13 @@ pub fn significant(value: f64, digits: usize) -> String {
     if !value.is_finite() {
         return "n/a".to_owned();
     }
-    let magnitude = value.abs().log10().floor();
-    if !(-5.0..9.0).contains(&magnitude) {
-        return format!("{value:.*e}", digits.saturating_sub(1));
+    // The exponent of the rounded number: 0.9999 to three digits is 1.00, not 1.000.
+    let rounded = format!("{value:.*e}", digits.saturating_sub(1));
+    let exponent = rounded.rsplit('e').next().and_then(|e| e.parse::<i32>().ok()).unwrap_or(0);
+    if !(-5..9).contains(&exponent) {
+        return rounded;
     }
-    let decimals = (digits as f64 - 1.0 - magnitude).max(0.0) as usize;
+    let decimals = usize::try_from(digits as i32 - 1 - exponent).unwrap_or(0);
     format!("{value:.decimals$}")
 }
 
@@ -170,6 +172,7 @@ mod tests {
             (27192.8, 3, "27193"),
             (-0.05, 2, "-0.050"),
             (0.0, 3, "0"),
+            (0.99996, 3, "1.00"),
             (1.5e-9, 3, "1.50e-9"),
         ] {
             assert_eq!(significant(value, digits), text);

@@ -1,7 +1,7 @@
 //! A report for a terminal. The only file that knows prettytable.
 
 use super::model::{Report, Table};
-use super::text::{COLUMNS, indented, paragraph};
+use super::text::{COLUMNS, fill, indented, paragraph};
 use crate::engine::findings::Status;
 use prettytable::format::{Alignment, FormatBuilder, LinePosition, LineSeparator};
 use prettytable::{Cell, Row};
@@ -81,7 +81,7 @@ pub fn grid(table: &Table) -> String {
     let widths = word_widths(table);
     let cell = |(column, text): (usize, &String)| {
         let align = if column < table.words { Alignment::LEFT } else { Alignment::RIGHT };
-        let text = widths.get(column).map_or_else(|| text.clone(), |width| textwrap::fill(text, *width));
+        let text = widths.get(column).map_or_else(|| text.clone(), |width| fill(text, *width));
         Cell::new_align(&text, align)
     };
     let row = |cells: &[String]| Row::new(cells.iter().enumerate().map(cell).collect());

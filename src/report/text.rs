@@ -14,15 +14,26 @@ pub fn inert(text: &str) -> String {
         .collect()
 }
 
+/// Breaks at blanks, line by line: reports are plain text, and the search for the prettiest breaks costs more than the figures.
+fn options<'a>(width: usize) -> textwrap::Options<'a> {
+    textwrap::Options::new(width)
+        .word_separator(textwrap::WordSeparator::AsciiSpace)
+        .wrap_algorithm(textwrap::WrapAlgorithm::FirstFit)
+}
+
+/// Text broken to a width.
+pub fn fill(text: &str, width: usize) -> String {
+    textwrap::fill(text, options(width))
+}
+
 /// Paragraph wrapped to the report's width, with an indent for every line after the first.
 pub fn paragraph(text: &str, indent: &str) -> String {
-    let options = textwrap::Options::new(COLUMNS).subsequent_indent(indent);
-    textwrap::fill(text, options)
+    textwrap::fill(text, options(COLUMNS).subsequent_indent(indent))
 }
 
 /// A paragraph of which every line is indented.
 pub fn indented(text: &str, indent: &str) -> String {
-    textwrap::fill(text, textwrap::Options::new(COLUMNS).initial_indent(indent).subsequent_indent(indent))
+    textwrap::fill(text, options(COLUMNS).initial_indent(indent).subsequent_indent(indent))
 }
 
 #[cfg(test)]

@@ -10,7 +10,7 @@ use crate::engine::solve::root::{Evaluation, Tolerance, bracketed_with_signs};
 
 /// Intervals of the scan over the share. A characteristic that turns twice within one interval would need rows of more than
 /// one kind of falling branch; the local search between grid points below finds a pair of balances that lie closer.
-const SCAN_INTERVALS: usize = 40;
+const SCAN_INTERVALS: usize = 24;
 /// An imbalance below this part of the pressure drop counts as balanced.
 pub(crate) const BALANCED: f64 = 1e-9;
 /// Tolerance of a share.

@@ -28,24 +28,22 @@ pub(crate) fn ends_drop_pa(model: &Model<'_>, arrangement: &Arrangement, point: 
     Some(above + below)
 }
 
-/// Pressure drop of the column at the required shares, Pa: the wall zone counts with its greatest side. None if internals have
-/// no friction or are beyond flood.
-pub(crate) fn column_drop_pa(
+/// The column with its walls placed by the case's rules; none if its internals have no friction or the wall cannot stand.
+pub(crate) fn required_column(
     model: &Model<'_>,
     placer: &Placer<'_, '_>,
     diameters_m: [f64; 3],
-    point: usize,
-) -> EngineResult<Option<f64>> {
+) -> EngineResult<Option<Arrangement>> {
     let [_, zone_m, _] = diameters_m;
     if !model.has_friction() {
         return Ok(None);
     }
     let Ok(positions) = placer.standing(zone_m) else { return Ok(None) };
-    let arrangement = Arrangement::new(model, diameters_m, positions)?;
-    Ok(required_drop_pa(model, &arrangement, point))
+    Arrangement::new(model, diameters_m, positions).map(Some)
 }
 
-/// The same for a column that stands.
+/// Pressure drop of the column at the required shares, Pa: the wall zone counts with its greatest side. None if internals have
+/// no friction or are beyond flood.
 pub(crate) fn required_drop_pa(model: &Model<'_>, arrangement: &Arrangement, point: usize) -> Option<f64> {
     let zone = Zone::new(model, &arrangement.zone, point);
     let mut greatest = 0.0_f64;

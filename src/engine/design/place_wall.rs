@@ -13,7 +13,7 @@ use std::cell::RefCell;
 /// Least distance of a wall's face from its neighbour or the shell while searching, as part of the diameter.
 const LEAST_GAP: f64 = 1e-6;
 /// Tolerance of a position as part of the diameter.
-const POSITION_TOLERANCE: f64 = 1e-14;
+const POSITION_TOLERANCE: f64 = 1e-12;
 /// Sweeps over several walls, each of which is put right with the others held; two compartments need one.
 const SWEEPS: usize = 200;
 /// Stands for the logarithm of an endless pressure drop (a flooded side); beyond any real ratio of drops.
@@ -78,12 +78,30 @@ impl<'m, 'a> Placer<'m, 'a> {
             });
         }
         if let Some(band) = wants_drop {
+            let same = self.last.borrow().as_ref().is_some_and(|(last_m, _)| *last_m == diameter_m);
+            if same {
+                return Ok(standing);
+            }
             let warm = self.last.borrow().is_some();
             let step = if warm { WARM_STEP } else { COLD_STEP };
             standing = equal_drop(self.model, diameter_m, &standing, band, step)?;
             *self.last.borrow_mut() = standing.get(band).map(|found| (diameter_m, found.clone()));
         }
         Ok(standing)
+    }
+
+    /// The standing positions carried over in proportion from the last shell, where a figure need only be about right.
+    pub fn about(&self, diameter_m: f64) -> EngineResult<Vec<Vec<f64>>> {
+        let last = self.last.borrow().clone();
+        match last {
+            Some((last_m, found)) => {
+                *self.last.borrow_mut() = Some((diameter_m, found.iter().map(|x| x * diameter_m / last_m).collect()));
+                let about = self.standing(diameter_m);
+                *self.last.borrow_mut() = Some((last_m, found));
+                about
+            }
+            None => self.standing(diameter_m),
+        }
     }
 
     fn start(&self, diameter_m: f64, weights: &BandWeights) -> EngineResult<Vec<f64>> {
@@ -227,27 +245,28 @@ fn place_one(
     let first = at(start)?;
     // Walk from the start towards the sign change, so that shapes which cannot be built near the shell are never asked for.
     let direction = if first >= 0.0 { 1.0 } else { -1.0 };
-    let (mut near, mut step) = (start, first_step * diameter_m);
+    let (mut near, mut at_near, mut step) = (start, first, first_step * diameter_m);
     let mut bracket = None;
     for _ in 0..60 {
         let far = (near + direction * step).clamp(low, high);
         match at(far) {
             Ok(value) if value * direction <= 0.0 => {
-                bracket = Some((near.min(far), near.max(far)));
+                bracket = Some(((near, at_near), (far, value)));
                 break;
             }
             Ok(_) if far == low || far == high => break,
-            Ok(_) => {
-                near = far;
+            Ok(value) => {
+                (near, at_near) = (far, value);
                 step *= 2.0;
             }
             Err(_) => step *= 0.5,
         }
     }
-    let (from, to) = bracket.ok_or_else(|| EngineError::Search {
+    let ((from, at_from), (to, at_to)) = bracket.ok_or_else(|| EngineError::Search {
         what: "the position of the wall".to_owned(),
         why: "no position within the shell makes the two sides equal".to_owned(),
     })?;
-    let root = DesignRoot { what: "position of the wall", from, to, tolerance: POSITION_TOLERANCE * diameter_m };
+    let tolerance = POSITION_TOLERANCE * diameter_m;
+    let root = DesignRoot { what: "position of the wall", from, to, tolerance, at_ends: (at_from, at_to) };
     design_root(root, at)
 }

@@ -62,7 +62,7 @@ impl<'a> Probe<'a> {
         for (side, geometry) in self.model.sides.iter().zip(&self.arrangement.zone.sides) {
             for (section, geometry) in side.sections.iter().zip(&geometry.sections) {
                 for load in section.loads_at(point) {
-                    sum += section.model.row_friction(geometry, &load.with_vapour(factor)).unwrap_or(0.0);
+                    sum += section.model.row_friction(geometry, &load.with_vapour(factor), None).unwrap_or(0.0);
                 }
             }
         }

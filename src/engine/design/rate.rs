@@ -6,6 +6,7 @@ use super::model::CompiledSection;
 use crate::engine::findings::Criterion;
 use crate::engine::hydraulics::load::StageLoad;
 use crate::engine::hydraulics::section::{BeyondFlood, SectionGeometry};
+use crate::engine::hydraulics::tray::SieveTray;
 
 /// A figure this far over its limit (relatively) still counts as at the limit: a shell sized to the limit meets it.
 pub(crate) const AT_LIMIT: f64 = 1e-9;
@@ -80,79 +81,108 @@ pub(crate) fn rate<'l>(
 ) -> Result<SectionRating<'l>, BeyondFlood> {
     let model = &section.model;
     let loads = section.loads_at(point);
-    let friction_pa = if model.has_friction() { Some(model.friction_pa(geometry, loads, factor)?) } else { None };
-    let judged =
-        section.limits.get(point).map_or_else(Vec::new, |limits| judge_rows(section, geometry, limits, loads, factor));
-    Ok(SectionRating { friction_pa, judged })
+    let Some(limits) = section.limits.get(point) else {
+        return Ok(SectionRating { friction_pa: None, judged: Vec::new() });
+    };
+    if let Some(tray) = model.tray() {
+        let (drop_pa, judged) = judge_trays(tray, section, geometry, limits, loads, factor);
+        return Ok(SectionRating { friction_pa: Some(drop_pa * model.trays / loads.len().max(1) as f64), judged });
+    }
+    let mut friction = None;
+    let mut gradients_pa_m = Vec::new();
+    if model.has_friction() {
+        for (row, load) in loads.iter().enumerate() {
+            let near = gradients_pa_m.last().copied();
+            let gradient = model.row_friction(geometry, &load.with_vapour(factor), near);
+            gradients_pa_m.push(gradient.ok_or(BeyondFlood { row })?);
+        }
+        friction = Some(gradients_pa_m.iter().sum::<f64>() * model.parts() / loads.len().max(1) as f64);
+    }
+    let judged = judge_beds(section, geometry, limits, loads, factor, &gradients_pa_m);
+    Ok(SectionRating { friction_pa: friction, judged })
 }
 
-fn judge_rows<'l>(
+/// Sum over rows of the drop of one tray, Pa, and every criterion of a tray section.
+fn judge_trays<'l>(
+    tray: &SieveTray,
     section: &'l CompiledSection<'_>,
     geometry: &SectionGeometry,
     limits: &'l SectionLimits,
     loads: &[StageLoad],
     factor: f64,
-) -> Vec<Judged<'l>> {
+) -> (f64, Vec<Judged<'l>>) {
     use Criterion as C;
     use Sense::{AtLeast, AtMost};
-    let model = &section.model;
+    let mut drops_pa = 0.0;
     let mut flood = Worst::new(C::ApproachToFlood, &limits.flood, AtMost);
-    let mut out: Vec<Worst<'l>> = Vec::new();
-    if let Some(tray) = model.tray() {
-        let mut system = Worst::new(C::SystemLimit, &limits.flood, AtMost);
-        let mut entrainment = Worst::new(C::Entrainment, &limits.entrainment, AtMost);
-        let mut froth = Worst::new(C::DowncomerFroth, &limits.froth, AtMost);
-        let mut velocity = Worst::new(C::DowncomerVelocity, &limits.downcomer_velocity, AtMost);
-        let mut residence = Worst::new(C::DowncomerResidence, &limits.residence, AtLeast);
-        let mut apron = Worst::new(C::ApronVelocity, &limits.apron_velocity, AtMost);
-        let mut weir = Worst::new(C::WeirLoad, &limits.weir_load, AtMost);
-        let mut weir_least = Worst::new(C::WeirLoadLeast, &limits.weir_load_least, AtLeast);
-        let mut path = Worst::new(C::FlowPath, &limits.flow_path, AtLeast);
-        let mut weep = Worst::new(C::Weep, &limits.weep, AtMost);
-        for (row, load) in loads.iter().enumerate() {
-            let load = load.with_vapour(factor);
-            let here = Some(row);
-            let fraction = tray.flooding_area_m2(&load) / geometry.area_m2;
-            flood.take(here, fraction);
-            system.take(here, tray.system_limit_area_m2(&load) / geometry.area_m2);
-            entrainment.take(here, tray.entrainment(&load, fraction));
-            if let Some(figures) = model.tray_figures(geometry, &load) {
-                froth.take(here, figures.froth);
-                velocity.take(here, figures.downcomer_velocity_m_s);
-                residence.take(here, figures.downcomer_residence_s);
-                apron.take(here, figures.apron_velocity_m_s);
-                weir.take(here, figures.weir_load_m2_s);
-                weir_least.take(here, figures.weir_load_m2_s);
-                weep.take(here, figures.weep);
-            }
-        }
-        if let Some(layout) = &geometry.layout {
-            path.take(None, shortest_path_m(layout));
-        }
-        out.extend([flood, system, entrainment, froth, velocity, residence, apron, weir, weir_least, path, weep]);
-    } else {
-        for (row, load) in loads.iter().enumerate() {
-            flood.take(Some(row), model.flooding_area_m2(&load.with_vapour(factor)) / geometry.area_m2);
-        }
-        out.push(flood);
-        if let Some(limit) = &limits.wetting {
-            let mut wetting = Worst::new(C::Wetting, limit, AtLeast);
-            for (row, load) in loads.iter().enumerate() {
-                wetting.take(Some(row), load.liquid_m3_s() / geometry.area_m2);
-            }
-            out.push(wetting);
-        }
-        if let Some(limit) = &limits.bed_pressure_drop {
-            let mut gradient = Worst::new(C::BedPressureDrop, limit, AtMost);
-            for (row, load) in loads.iter().enumerate() {
-                if let Some(pa_m) = model.friction_gradient_pa_m(geometry, &load.with_vapour(factor)) {
-                    gradient.take(Some(row), pa_m);
-                }
-            }
-            out.push(gradient);
+    let mut system = Worst::new(C::SystemLimit, &limits.flood, AtMost);
+    let mut entrainment = Worst::new(C::Entrainment, &limits.entrainment, AtMost);
+    let mut froth = Worst::new(C::DowncomerFroth, &limits.froth, AtMost);
+    let mut velocity = Worst::new(C::DowncomerVelocity, &limits.downcomer_velocity, AtMost);
+    let mut residence = Worst::new(C::DowncomerResidence, &limits.residence, AtLeast);
+    let mut apron = Worst::new(C::ApronVelocity, &limits.apron_velocity, AtMost);
+    let mut weir = Worst::new(C::WeirLoad, &limits.weir_load, AtMost);
+    let mut weir_least = Worst::new(C::WeirLoadLeast, &limits.weir_load_least, AtLeast);
+    let mut path = Worst::new(C::FlowPath, &limits.flow_path, AtLeast);
+    let mut weep = Worst::new(C::Weep, &limits.weep, AtMost);
+    for (row, load) in loads.iter().enumerate() {
+        let load = load.with_vapour(factor);
+        let here = Some(row);
+        let fraction = tray.flooding_area_m2(&load) / geometry.area_m2;
+        flood.take(here, fraction);
+        system.take(here, tray.system_limit_area_m2(&load) / geometry.area_m2);
+        entrainment.take(here, tray.entrainment(&load, fraction));
+        if let Some(figures) = section.model.tray_figures(geometry, &load) {
+            drops_pa += figures.drop_pa;
+            froth.take(here, figures.froth);
+            velocity.take(here, figures.downcomer_velocity_m_s);
+            residence.take(here, figures.downcomer_residence_s);
+            apron.take(here, figures.apron_velocity_m_s);
+            weir.take(here, figures.weir_load_m2_s);
+            weir_least.take(here, figures.weir_load_m2_s);
+            weep.take(here, figures.weep);
         }
     }
-    out.into_iter().map(|worst| worst.judged).filter(|judged| !judged.si.is_nan()).collect()
+    if let Some(layout) = &geometry.layout {
+        path.take(None, shortest_path_m(layout));
+    }
+    let all = [flood, system, entrainment, froth, velocity, residence, apron, weir, weir_least, path, weep];
+    (drops_pa, known(all))
+}
+
+/// Every criterion of a packed or declared section; `gradients_pa_m` are the rows' frictions, none without a resistance.
+fn judge_beds<'l>(
+    section: &'l CompiledSection<'_>,
+    geometry: &SectionGeometry,
+    limits: &'l SectionLimits,
+    loads: &[StageLoad],
+    factor: f64,
+    gradients_pa_m: &[f64],
+) -> Vec<Judged<'l>> {
+    let mut flood = Worst::new(Criterion::ApproachToFlood, &limits.flood, Sense::AtMost);
+    for (row, load) in loads.iter().enumerate() {
+        flood.take(Some(row), section.model.flooding_area_m2(&load.with_vapour(factor)) / geometry.area_m2);
+    }
+    let wetting = limits.wetting.as_ref().map(|limit| {
+        let mut wetting = Worst::new(Criterion::Wetting, limit, Sense::AtLeast);
+        for (row, load) in loads.iter().enumerate() {
+            wetting.take(Some(row), load.liquid_m3_s() / geometry.area_m2);
+        }
+        wetting
+    });
+    let gradient = limits.bed_pressure_drop.as_ref().map(|limit| {
+        let mut gradient = Worst::new(Criterion::BedPressureDrop, limit, Sense::AtMost);
+        for (row, pa_m) in gradients_pa_m.iter().enumerate() {
+            gradient.take(Some(row), *pa_m);
+        }
+        gradient
+    });
+    known(std::iter::once(flood).chain(wetting).chain(gradient))
+}
+
+/// Those for which there was a figure at all.
+fn known<'l>(all: impl IntoIterator<Item = Worst<'l>>) -> Vec<Judged<'l>> {
+    all.into_iter().map(|worst| worst.judged).filter(|judged| !judged.si.is_nan()).collect()
 }
 
 /// True for the criteria that may enlarge a shell (definition 4).

@@ -1,7 +1,7 @@
 //! Shell diameters: the smallest at which the sizing criteria hold at every point and the required shares (definition 4).
 
 use super::arrangement::{EndGeometry, ZoneGeometry};
-use super::column::column_drop_pa;
+use super::column::{required_column, required_drop_pa};
 use super::model::{Model, Stack};
 use super::place_wall::Placer;
 use super::rate::{AT_LIMIT, rate, sizes_the_shell};
@@ -14,7 +14,7 @@ use crate::engine::units::Si;
 use std::f64::consts::PI;
 
 /// Tolerance of ln(diameter).
-const LOG_TOLERANCE: f64 = 1e-13;
+const LOG_TOLERANCE: f64 = 1e-11;
 /// Logarithm that stands for "no answer at all in so small a shell"; far beyond any real miss.
 const HOPELESS: f64 = 20.0;
 /// Factor on the diameter over which the power of each figure is taken.
@@ -139,7 +139,9 @@ fn runner_up(
     diameter_m: f64,
     rest: impl Iterator<Item = Margin>,
 ) -> EngineResult<Option<(Margin, f64)>> {
-    let Some(wider) = margins(model, placer, part, diameter_m * NEARBY)? else { return Ok(None) };
+    let nearby_m = diameter_m * NEARBY;
+    let about = if part == Part::WallZone { placer.about(nearby_m).ok() } else { None };
+    let Some(wider) = margins_at(model, part, nearby_m, about)? else { return Ok(None) };
     let mut best: Option<(Margin, f64)> = None;
     for margin in rest {
         let there = wider.iter().find(|m| m.criterion == margin.criterion && m.section == margin.section);
@@ -200,25 +202,31 @@ fn margins(
     part: Part,
     diameter_m: f64,
 ) -> EngineResult<Option<Vec<Margin>>> {
+    // In a shell too small for the wall, or where both sides are beyond flood, nothing can be placed.
+    let positions = if part == Part::WallZone { placer.standing(diameter_m).ok() } else { None };
+    margins_at(model, part, diameter_m, positions)
+}
+
+/// The same with the walls at these positions.
+fn margins_at(
+    model: &Model<'_>,
+    part: Part,
+    diameter_m: f64,
+    positions: Option<Vec<Vec<f64>>>,
+) -> EngineResult<Option<Vec<Margin>>> {
     let mut out = Vec::new();
+    let of_end = |stack: &Stack<'_>, out: &mut Vec<Margin>| -> EngineResult<bool> {
+        let geometry = EndGeometry::new(stack, diameter_m)?;
+        Ok(stack_margins(model, stack, &geometry.sections, out))
+    };
     let fits = match part {
-        Part::Above => {
-            let geometry = EndGeometry::new(&model.above, diameter_m)?;
-            stack_margins(model, &model.above, &geometry.sections, &mut out)
-        }
-        Part::Below => {
-            let geometry = EndGeometry::new(&model.below, diameter_m)?;
-            stack_margins(model, &model.below, &geometry.sections, &mut out)
-        }
+        Part::Above => of_end(&model.above, &mut out)?,
+        Part::Below => of_end(&model.below, &mut out)?,
         Part::WallZone => {
-            // In a shell too small for the wall, or where both sides are beyond flood, nothing can be placed.
-            let Ok(positions) = placer.standing(diameter_m) else { return Ok(None) };
+            let Some(positions) = positions else { return Ok(None) };
             let Ok(zone) = ZoneGeometry::new(model, diameter_m, positions) else { return Ok(None) };
-            let mut fits = true;
-            for (side, geometry) in model.sides.iter().zip(&zone.sides) {
-                fits &= stack_margins(model, side, &geometry.sections, &mut out);
-            }
-            fits
+            let sides = model.sides.iter().zip(&zone.sides);
+            sides.fold(true, |fits, (side, geometry)| stack_margins(model, side, &geometry.sections, &mut out) && fits)
         }
     };
     Ok(fits.then_some(out))
@@ -247,19 +255,26 @@ fn stack_margins(model: &Model<'_>, stack: &Stack<'_>, geometry: &[SectionGeomet
 
 /// The least diameter at or above `start_m` at which `worst` (falling with the diameter) is not positive.
 fn least_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> EngineResult<f64> {
-    if worst(start_m)? <= AT_LIMIT {
+    let at_start = worst(start_m)?;
+    if at_start <= AT_LIMIT {
         return Ok(start_m);
     }
-    let mut low_m = start_m;
+    let (mut low_m, mut at_low) = (start_m, at_start);
     let mut step = 1.02;
     for _ in 0..DOUBLINGS * 8 {
         let high_m = low_m * step;
-        if worst(high_m)? <= 0.0 {
-            let root =
-                DesignRoot { what: "shell diameter", from: low_m.ln(), to: high_m.ln(), tolerance: LOG_TOLERANCE };
+        let at_high = worst(high_m)?;
+        if at_high <= 0.0 {
+            let root = DesignRoot {
+                what: "shell diameter",
+                from: low_m.ln(),
+                to: high_m.ln(),
+                tolerance: LOG_TOLERANCE,
+                at_ends: (at_low, at_high),
+            };
             return design_root(root, |log_m| worst(log_m.exp())).map(f64::exp);
         }
-        low_m = high_m;
+        (low_m, at_low) = (high_m, at_high);
         step = (step * step).min(2.0);
         if high_m > start_m * f64::from(1 << DOUBLINGS) {
             break;
@@ -284,10 +299,11 @@ fn for_the_column(
     let any_sized = with_given(least_m) != with_given(least_m.map(|d| d * 2.0));
     let worst_margin = |factor: f64| -> EngineResult<Option<Margin>> {
         let diameters_m = with_given(least_m.map(|d| d * factor));
+        let Some(column) = required_column(model, placer, diameters_m)? else { return Ok(None) };
         let mut worst: Option<Margin> = None;
         for (point, limits) in model.column_limits.iter().enumerate() {
             let Some(limit) = &limits.pressure_drop else { continue };
-            let Some(drop_pa) = column_drop_pa(model, placer, diameters_m, point)? else { return Ok(None) };
+            let Some(drop_pa) = required_drop_pa(model, &column, point) else { return Ok(None) };
             let ratio = drop_pa / limit.si;
             if worst.as_ref().is_none_or(|w| ratio > w.ratio) {
                 worst = Some(Margin { criterion: Criterion::PressureDrop, section: None, point, ratio });

@@ -173,7 +173,7 @@ fn one_deck(
     c.at("net area", deck.net_area.si(), number(wanted, "net_area_m2"), GEOMETRY);
     c.at("active area", deck.active_area.si(), number(wanted, "active_area_m2"), GEOMETRY);
     c.at("hole area", deck.hole_area.si(), number(wanted, "hole_area_m2"), GEOMETRY);
-    let figures = bennett.deck_figures(deck, below, load);
+    let figures = bennett.deck_figures(deck, bennett.crests_m(deck, load), bennett.crests_m(below, load), load);
     c.at("hole velocity", figures.hole_velocity_m_s, number(wanted, "hole_velocity_m_s"), HYDRAULICS);
     c.at("froth density", bennett.froth_density(deck, load), number(wanted, "bennett_froth_density"), HYDRAULICS);
     c.at("orifice coefficient", bennett.orifice_coefficient, number(wanted, "orifice_coefficient"), HYDRAULICS);
@@ -230,7 +230,7 @@ fn one_pass(
     let onset =
         m.onset.least_hole_velocity_m_s(bennett.weir_height_m + crest_m, bennett.hole_diameter_m, load.rho_v_kg_m3);
     c.at("weep onset", onset, number(wanted, "weep_onset_hole_velocity_m_s"), HYDRAULICS);
-    let figures = bennett.deck_figures(deck, below, load);
+    let figures = bennett.deck_figures(deck, bennett.crests_m(deck, load), bennett.crests_m(below, load), load);
     let rate = m.weep.rate_m_s(
         figures.hole_velocity_m_s,
         bennett.bennett_head_m(weir_load, froth_density),

@@ -123,14 +123,15 @@ impl PackedBed {
         load_m3_s / (capacity_m_s(later).min(capacity_m_s(older)) * self.system_factor)
     }
 
-    /// Friction per height, Pa/m; none beyond flood.
-    pub fn friction_pa_m(&self, area_m2: f64, load: &StageLoad) -> Option<f64> {
+    /// Friction per height, Pa/m; none beyond flood. `near` is the answer of a neighbouring row, if known: it saves steps and
+    /// changes nothing.
+    pub fn friction_pa_m(&self, area_m2: f64, load: &StageLoad, near: Option<f64>) -> Option<f64> {
         let velocity_m_s = load.vapour_m3_s() / area_m2;
         match &self.drop {
             BedDrop::Stichlmair(bed) => {
                 let dry = bed.dry(velocity_m_s, load.rho_v_kg_m3, load.mu_v_pa_s);
                 let hold_up = bed.hold_up(load.liquid_m3_s() / area_m2);
-                bed.wet_pa_m(dry, hold_up, load.rho_l_kg_m3, None)
+                bed.wet_pa_m(dry, hold_up, load.rho_l_kg_m3, near)
             }
             BedDrop::Later { chart, factor_per_m } => {
                 let cp = chart.cp_from_si(velocity_m_s * load.capacity_group(), *factor_per_m, load.nu_l_m2_s());
@@ -153,7 +154,7 @@ impl PackedBed {
             older.chart.outside(older.flood_pa_m, abscissa(load), found);
             older.flood_drop.outside(older.factor_per_m, found);
         }
-        if let Some(gradient_pa_m) = self.friction_pa_m(area_m2, load) {
+        if let Some(gradient_pa_m) = self.friction_pa_m(area_m2, load, None) {
             match &self.drop {
                 BedDrop::Stichlmair(_) => {}
                 BedDrop::Later { chart, .. } => chart.outside(gradient_pa_m, load.flow_parameter(), found),

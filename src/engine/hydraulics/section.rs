@@ -133,27 +133,30 @@ impl SectionModel {
         factor: f64,
     ) -> Result<f64, BeyondFlood> {
         let mut sum = 0.0;
+        let mut near = None;
         for (row, load) in loads.iter().enumerate() {
-            sum += self.row_friction(geometry, &load.with_vapour(factor)).ok_or(BeyondFlood { row })?;
+            let friction = self.row_friction(geometry, &load.with_vapour(factor), near).ok_or(BeyondFlood { row })?;
+            near = Some(friction);
+            sum += friction;
         }
         Ok(sum * self.parts() / loads.len() as f64)
     }
 
     /// Friction of one row per metre of height, Pa/m.
     pub fn friction_gradient_pa_m(&self, geometry: &SectionGeometry, load: &StageLoad) -> Option<f64> {
-        self.row_friction(geometry, load).map(|friction| friction * self.parts() / self.height_m)
+        self.row_friction(geometry, load, None).map(|friction| friction * self.parts() / self.height_m)
     }
 
     /// What one unit of [`Self::row_friction`] is counted in: trays or metres.
-    fn parts(&self) -> f64 {
+    pub fn parts(&self) -> f64 {
         if self.trays > 0.0 { self.trays } else { self.height_m }
     }
 
-    /// Friction of one row: Pa per tray, or Pa per metre of bed; none beyond flood.
-    pub fn row_friction(&self, geometry: &SectionGeometry, load: &StageLoad) -> Option<f64> {
+    /// Friction of one row: Pa per tray, or Pa per metre of bed; none beyond flood. `near` may give that of a neighbouring row.
+    pub fn row_friction(&self, geometry: &SectionGeometry, load: &StageLoad, near: Option<f64>) -> Option<f64> {
         match (&self.hydraulics, &geometry.layout) {
             (Hydraulics::Tray(tray), Some(layout)) => Some(tray.drop_pa(layout, load)),
-            (Hydraulics::Packing(bed), _) => bed.friction_pa_m(geometry.area_m2, load),
+            (Hydraulics::Packing(bed), _) => bed.friction_pa_m(geometry.area_m2, load, near),
             (Hydraulics::Declared(declared), _) => declared.friction_pa_m(geometry.area_m2, load),
             (Hydraulics::Tray(_), None) => None,
         }

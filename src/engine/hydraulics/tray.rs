@@ -11,8 +11,8 @@ use crate::engine::correlation::range::Outside;
 use crate::engine::geometry::{Deck, Pass, TrayLayout};
 use crate::engine::units::{Length, STANDARD_GRAVITY_M_S2, Si};
 
-/// Rounds of the weir-crest iteration; each gains two to three digits, so the cap is never reached in practice.
-const CREST_ROUNDS: usize = 60;
+/// Rounds of the weir-crest iteration; each doubles the digits, so the cap is never reached in practice.
+const CREST_ROUNDS: usize = 30;
 /// Relative change at which the crest iteration has settled.
 const CREST_TOLERANCE: f64 = 1e-13;
 
@@ -123,17 +123,29 @@ impl SieveTray {
 
     /// Pressure drop of one tray, Pa: the mean of the alternate trays.
     pub fn drop_pa(&self, layout: &TrayLayout, load: &StageLoad) -> f64 {
-        let decks = layout.decks();
-        let heads: f64 = decks.iter().map(|deck| self.deck_head_m(deck, load)).sum();
-        heads / decks.len() as f64 * load.rho_l_kg_m3 * STANDARD_GRAVITY_M_S2
+        let head_m = match layout.decks() {
+            // Alternate decks mostly have one active area, and then one froth density and one dry head.
+            [first, second] if first.active_area == second.active_area => {
+                let froth_density = self.froth_density(first, load);
+                let wet = self.wet_head_m(first, load, froth_density) + self.wet_head_m(second, load, froth_density);
+                self.dry_head_m(first, load) + 0.5 * wet + self.residual_head_m(load)
+            }
+            decks => decks.iter().map(|deck| self.deck_head_m(deck, load)).sum::<f64>() / decks.len() as f64,
+        };
+        head_m * load.rho_l_kg_m3 * STANDARD_GRAVITY_M_S2
     }
 
     /// Total head of one deck, m of its liquid; the mean of its passes, which share one vapour space.
     fn deck_head_m(&self, deck: &Deck, load: &StageLoad) -> f64 {
+        let wet_m = self.wet_head_m(deck, load, self.froth_density(deck, load));
+        self.dry_head_m(deck, load) + wet_m + self.residual_head_m(load)
+    }
+
+    /// Clear liquid on a deck, m: the mean of its passes.
+    fn wet_head_m(&self, deck: &Deck, load: &StageLoad, froth_density: f64) -> f64 {
         let passes = deck.passes();
-        let froth_density = self.froth_density(deck, load);
-        let wet: f64 = passes.iter().map(|pass| self.liquid_head_m(deck, pass, load, froth_density)).sum();
-        self.dry_head_m(deck, load) + wet / passes.len() as f64 + self.residual_head_m(load)
+        let sum: f64 = passes.iter().map(|pass| self.liquid_head_m(deck, pass, load, froth_density)).sum();
+        sum / passes.len() as f64
     }
 
     /// Relative froth density on a deck by Bennett, Agrawal and Cook.
@@ -185,48 +197,65 @@ impl SieveTray {
     fn crest_m(&self, pass: &Pass, load: &StageLoad) -> f64 {
         let open_m = pass.weir.length().si() * self.weir_open;
         let flow_m3_s = load.liquid_m3_s() * pass.liquid_fraction;
+        // A weir so short that the sheet would vanish has no crest by this formula; half its length is already absurd.
+        let least_m = 0.5 * open_m;
+        let contracted = |effective_m: f64| {
+            let first_crest_m = self.methods.weir.first_crest_m(flow_m3_s / effective_m);
+            (pass.weir.length_moved(Length::from_si(first_crest_m)).si() * self.weir_open).max(least_m)
+        };
         let mut effective_m = open_m;
         for _ in 0..CREST_ROUNDS {
-            let first_crest_m = self.methods.weir.first_crest_m(flow_m3_s / effective_m);
-            let next_m = pass.weir.length_moved(Length::from_si(first_crest_m)).si() * self.weir_open;
-            let settled = (next_m - effective_m).abs() <= CREST_TOLERANCE * open_m;
-            effective_m = next_m;
-            // A weir so short that the sheet would vanish has no crest by this formula; half its length is already absurd.
-            if settled || effective_m < 0.5 * open_m {
+            // Aitken's step: two plain ones, and the limit of the geometric series that they begin.
+            let once_m = contracted(effective_m);
+            let twice_m = contracted(once_m);
+            let bend_m = twice_m - 2.0 * once_m + effective_m;
+            let limit_m = effective_m - (once_m - effective_m).powi(2) / bend_m;
+            let next_m = if limit_m.is_finite() && limit_m >= least_m && limit_m <= open_m { limit_m } else { twice_m };
+            let settled = (twice_m - once_m).abs() <= CREST_TOLERANCE * open_m;
+            effective_m = if settled { twice_m } else { next_m };
+            if settled {
                 break;
             }
         }
-        let constriction = (open_m / effective_m.max(0.5 * open_m)).powf(2.0 / 3.0);
+        let constriction = (open_m / effective_m).powf(2.0 / 3.0);
         self.methods.weir.crest_m(flow_m3_s / open_m, constriction)
+    }
+
+    /// Crests of a deck's passes; the second is zero where there is one pass.
+    fn crests_m(&self, deck: &Deck, load: &StageLoad) -> [f64; 2] {
+        let mut crests_m = [0.0; 2];
+        for (crest_m, pass) in crests_m.iter_mut().zip(deck.passes()) {
+            *crest_m = self.crest_m(pass, load);
+        }
+        crests_m
     }
 
     /// Everything of one tray at one load, the worst of the alternate trays figure by figure; the drop is their mean.
     pub fn figures(&self, layout: &TrayLayout, load: &StageLoad) -> TrayFigures {
-        let decks = layout.decks();
-        let mut worst: Option<TrayFigures> = None;
-        for (index, deck) in decks.iter().enumerate() {
+        match layout.decks() {
             // The downcomers of one tray discharge on the other one of the pair.
-            let below = decks.get(1 - index.min(1)).unwrap_or(deck);
-            let figures = self.deck_figures(deck, below, load);
-            worst = Some(worst.map_or(figures, |w| w.worse(&figures)));
+            [first, second] => {
+                let crests_m = [self.crests_m(first, load), self.crests_m(second, load)];
+                let [of_first, of_second] = crests_m;
+                let a = self.deck_figures(first, of_first, of_second, load);
+                let b = self.deck_figures(second, of_second, of_first, load);
+                TrayFigures { drop_pa: 0.5 * (a.drop_pa + b.drop_pa), ..a.worse(&b) }
+            }
+            [deck, ..] => {
+                let crests_m = self.crests_m(deck, load);
+                self.deck_figures(deck, crests_m, crests_m, load)
+            }
+            [] => TrayFigures::default(),
         }
-        let mut figures = worst.unwrap_or_default();
-        figures.drop_pa = self.drop_pa(layout, load);
-        figures
     }
 
-    /// Everything of one deck; `below` is the tray on which its downcomers discharge.
-    pub fn deck_figures(&self, deck: &Deck, below: &Deck, load: &StageLoad) -> TrayFigures {
+    /// Everything of one deck, from the crests of its own passes and of those of the tray on which its downcomers discharge.
+    fn deck_figures(&self, deck: &Deck, crests_m: [f64; 2], crests_below_m: [f64; 2], load: &StageLoad) -> TrayFigures {
         let froth_density = self.froth_density(deck, load);
-        let heads = |deck: &Deck, pass: &Pass| PassHeads {
-            weir_load_m2_s: self.weir_load_m2_s(pass, load),
-            liquid_head_m: self.liquid_head_m(deck, pass, load, froth_density),
-            crest_m: self.crest_m(pass, load),
-        };
         let dry_head_m = self.dry_head_m(deck, load);
         let residual_head_m = self.residual_head_m(load);
         let total_head_m = self.deck_head_m(deck, load);
-        let crest_below_m = below.passes().iter().map(|pass| self.crest_m(pass, load)).fold(0.0, f64::max);
+        let crest_below_m = crests_below_m.into_iter().fold(0.0, f64::max);
         let hole_velocity_m_s = load.vapour_m3_s() / deck.hole_area.si();
         let liquid_m3_s = load.liquid_m3_s();
 
@@ -240,8 +269,12 @@ impl SieveTray {
             ..TrayFigures::default()
         };
         let mut weep_m3_s = 0.0;
-        for pass in deck.passes() {
-            let heads = heads(deck, pass);
+        for (pass, crest_m) in deck.passes().iter().zip(crests_m) {
+            let heads = PassHeads {
+                weir_load_m2_s: self.weir_load_m2_s(pass, load),
+                liquid_head_m: self.liquid_head_m(deck, pass, load, froth_density),
+                crest_m,
+            };
             let flow_m3_s = liquid_m3_s * pass.liquid_fraction;
             let top_m2 = pass.downcomer_top_area.si();
             let bottom_m2 = pass.downcomer_bottom_area.si();

@@ -20,11 +20,15 @@ pub struct DesignRoot<'a> {
     pub to: f64,
     /// Absolute tolerance of the unknown.
     pub tolerance: f64,
+    /// The function at both ends, which whoever found the bracket has just worked out.
+    pub at_ends: (f64, f64),
 }
 
 /// A function that argmin may call: it remembers the first failure, and the evaluation nearest zero.
 struct Guarded<'a, F> {
     what: &'a str,
+    /// Both ends with their values, so that they are not worked out again.
+    ends: [(f64, f64); 2],
     function: RefCell<F>,
     failure: RefCell<Option<EngineError>>,
     best: Cell<Option<(f64, f64)>>,
@@ -35,7 +39,8 @@ impl<F: FnMut(f64) -> EngineResult<f64>> CostFunction for &Guarded<'_, F> {
     type Output = f64;
 
     fn cost(&self, x: &f64) -> Result<f64, Error> {
-        let value = (self.function.borrow_mut())(*x).and_then(|value| {
+        let known = self.ends.iter().find(|(end, _)| end == x).map(|(_, value)| *value);
+        let value = known.map_or_else(|| (self.function.borrow_mut())(*x), Ok).and_then(|value| {
             if value.is_finite() {
                 Ok(value)
             } else {
@@ -65,6 +70,7 @@ impl<F: FnMut(f64) -> EngineResult<f64>> CostFunction for &Guarded<'_, F> {
 pub fn design_root(root: DesignRoot<'_>, function: impl FnMut(f64) -> EngineResult<f64>) -> EngineResult<f64> {
     let guarded = Guarded {
         what: root.what,
+        ends: [(root.from, root.at_ends.0), (root.to, root.at_ends.1)],
         function: RefCell::new(function),
         failure: RefCell::new(None),
         best: Cell::new(None),
