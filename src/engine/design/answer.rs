@@ -25,8 +25,8 @@ const DESIGN: usize = 0;
 /// Sizes what the case leaves open, places the wall, balances the vapour and judges every criterion.
 ///
 /// # Errors
-/// [`EngineError::NoAnswer`] where a correlation is beyond flood at the required shares, [`EngineError::NoMethod`] where a method
-/// cannot serve its internals, [`EngineError::Geometry`] where a given wall does not fit the shell, [`EngineError::Search`] where
+/// `EngineError::NoAnswer` where a correlation is beyond flood at the required shares, `EngineError::NoMethod` where a method
+/// cannot serve its internals, `EngineError::Geometry` where a given wall does not fit the shell, `EngineError::Search` where
 /// no shell or position answers.
 pub fn work(case: &Case, catalogue: &Catalogue) -> EngineResult<Answer> {
     let model = Model::new(case, catalogue)?;

@@ -2,6 +2,7 @@
 
 use super::arrangement::ZoneGeometry;
 use super::model::{Model, Stack};
+use super::state::no_answer;
 use super::zone::Zone;
 use crate::engine::case::Position;
 use crate::engine::error::{EngineError, EngineResult};
@@ -172,17 +173,17 @@ pub(crate) fn equal_drop(
     };
     let start = others.get(band).cloned().unwrap_or_default();
     let found = sweep(model, diameter_m, start, first_step, |positions, wall| {
-        let zone = ZoneGeometry::new(model, diameter_m, with(positions))?;
-        let zone = Zone::new(model, &zone, DESIGN);
-        let drop = |side: usize| zone.sides.get(side).and_then(|s| s.drop_pa(1.0).ok()).map(f64::ln);
-        match (drop(wall), drop(wall + 1)) {
-            (Some(first), Some(second)) => Ok(first - second),
-            (None, Some(_)) => Ok(FLOODED),
-            (Some(_), None) => Ok(-FLOODED),
-            (None, None) => Err(EngineError::Search {
-                what: "the position of equal pressure drop".to_owned(),
-                why: "both sides are beyond flood in this shell".to_owned(),
-            }),
+        let geometry = ZoneGeometry::new(model, diameter_m, with(positions))?;
+        let zone = Zone::new(model, &geometry, DESIGN);
+        let (Some(first), Some(second)) = (zone.sides.get(wall), zone.sides.get(wall + 1)) else {
+            return Err(EngineError::Geometry { what: format!("wall {wall} does not stand between two compartments") });
+        };
+        match (first.drop_pa(1.0), second.drop_pa(1.0)) {
+            (Ok(first_pa), Ok(second_pa)) => Ok((first_pa / second_pa).ln()),
+            (Err(_), Ok(_)) => Ok(FLOODED),
+            (Ok(_), Err(_)) => Ok(-FLOODED),
+            // Wherever the wall stands in this shell, some row is beyond flood.
+            (Err(beyond), Err(_)) => Err(no_answer(model, &geometry, DESIGN, wall, beyond)),
         }
     })?;
     Ok(with(&found))

@@ -57,7 +57,7 @@ impl PointState {
         let mut state = Self::default();
         for (index, side) in zone.sides.iter().enumerate() {
             let friction_pa =
-                side.friction_pa(1.0).map_err(|beyond| no_answer(model, geometry, point, index, beyond, 1.0))?;
+                side.friction_pa(1.0).map_err(|beyond| no_answer(model, geometry, point, index, beyond))?;
             state.required_friction_pa.push(friction_pa);
             state.required_drop_pa.push(friction_pa + side.static_pa);
             state.required_exponents.push(side.exponents(1.0).ok());
@@ -95,17 +95,16 @@ impl PointState {
     }
 }
 
-/// The error for a row beyond flood in a compartment.
+/// The error for a row of a compartment that is beyond flood at the required shares.
 pub(crate) fn no_answer(
     model: &Model<'_>,
     geometry: &ZoneGeometry,
     point: usize,
     side: usize,
     beyond: Beyond,
-    bottom: f64,
 ) -> EngineError {
     let area_m2 = geometry.sides.get(side).map_or(f64::NAN, |g| g.area_m2);
-    no_answer_at(model, point, beyond, area_m2, bottom)
+    no_answer_at(model, point, beyond, area_m2, 1.0)
 }
 
 /// The error for a row beyond flood anywhere; `factor` is that on the section's vapour.
