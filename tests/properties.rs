@@ -54,6 +54,20 @@ fn draws() -> impl Strategy<Value = Draw> {
         })
 }
 
+/// One draw for the laws that need no variety.
+fn fixed(packed: bool) -> Draw {
+    Draw {
+        feed: [5.0, 6.0],
+        draw: [4.0, 4.5],
+        liquid: [5.0, 6.0],
+        rho: [2.8, 2.9],
+        height: [4.0, 5.0],
+        packed,
+        thickness: 0.01,
+        position: 0.1,
+    }
+}
+
 fn internals(packed: bool) -> Vec<Internals> {
     if packed {
         let packing = catalogue().packing("sheet 250/45").unwrap().clone();
@@ -238,16 +252,7 @@ proptest! {
 
 #[test]
 fn a_stepped_wall_with_equal_positions_equals_a_straight_one_to_the_last_digit() {
-    let d = Draw {
-        feed: [5.0, 6.0],
-        draw: [4.0, 4.5],
-        liquid: [5.0, 6.0],
-        rho: [2.8, 2.9],
-        height: [4.0, 5.0],
-        packed: true,
-        thickness: 0.01,
-        position: 0.1,
-    };
+    let d = fixed(true);
     let straight = solve(&build(&d, given(0.1), 1.0, false));
     let mut case = build(&d, given(0.1), 1.0, false);
     case.wall.bands =
@@ -263,16 +268,7 @@ fn a_stepped_wall_with_equal_positions_equals_a_straight_one_to_the_last_digit()
 
 #[test]
 fn a_wall_closed_at_a_head_has_no_actual_share() {
-    let d = Draw {
-        feed: [5.0, 6.0],
-        draw: [4.0, 4.5],
-        liquid: [5.0, 6.0],
-        rho: [2.8, 2.9],
-        height: [4.0, 5.0],
-        packed: false,
-        thickness: 0.01,
-        position: 0.1,
-    };
+    let d = fixed(false);
     for reach in [Reach::Top, Reach::Bottom] {
         let mut case = build(&d, given(0.1), 1.0, false);
         case.wall.reach = reach;

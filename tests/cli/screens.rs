@@ -113,3 +113,15 @@ fn screens_are_as_they_were_read_and_approved() {
     screen_is!("methods-stichlmair", &["methods", "stichlmair"]);
     screen_is!("help", &["--help"]);
 }
+
+#[test]
+fn readme_shows_what_the_program_prints() {
+    let readme = std::fs::read_to_string(concat!(env!("CARGO_MANIFEST_DIR"), "/README.md")).unwrap();
+    let shown = readme.split("```text\n").nth(1).unwrap().split("```").next().unwrap();
+    let printed = run(&["size", &shipped("ketone")]).out;
+    let lines: Vec<&str> = shown.lines().filter(|line| *line != "...").collect();
+    assert!(lines.len() >= 6);
+    for line in lines {
+        assert!(printed.lines().any(|p| p == line), "README shows a line that is not printed: {line}");
+    }
+}

@@ -38,7 +38,7 @@ pub fn work(case: &Case, catalogue: &Catalogue) -> EngineResult<Answer> {
     let states = (0..model.points.len())
         .map(|point| PointState::new(&model, &arrangement.zone, point))
         .collect::<EngineResult<Vec<_>>>()?;
-    let bench = Bench { model: &model, arrangement: &arrangement, states: &states };
+    let bench = Bench::new(&model, &arrangement, &states)?;
     let findings = bench.findings()?;
     let verdict = findings.iter().map(|f| f.status).max().unwrap_or(Status::Met);
     let design = states.first().cloned().unwrap_or_default();

@@ -1,11 +1,8 @@
 //! Figures of every section for the answer: floods, loads on the place, trays, rows.
 
-use super::judge::Bench;
+use super::judge::{Bench, BothRatings};
 use super::model::{CompiledSection, Model};
-use super::rate::rate;
 use super::size::required_area_m2;
-use super::state::no_answer_at;
-use super::zone::Beyond;
 use crate::engine::case::Place;
 use crate::engine::error::{EngineError, EngineResult};
 use crate::engine::geometry::{Deck, TrayLayout};
@@ -22,22 +19,11 @@ const DESIGN: usize = 0;
 
 pub(crate) fn sections(bench: &Bench<'_, '_>) -> EngineResult<Vec<SectionResult>> {
     let mut out: Vec<(usize, SectionResult)> = Vec::new();
+    let mut ratings = bench.ratings(DESIGN).iter();
     for (stack, (geometry, _)) in bench.model.stacks().zip(bench.arrangement.stacks()) {
-        let bottom = match stack.place {
-            Place::Compartment(side) => bench.states.first().and_then(|s| s.actual_factor(bench.model, DESIGN, side)),
-            // Above and below the wall nothing depends on the shares.
-            _ => bench.states.first().and_then(|s| s.actual.as_ref()).map(|_| 1.0),
-        };
-        for (section, geometry) in stack.sections.iter().zip(geometry) {
-            let actual = bottom.map(|bottom| section.factor(DESIGN, bottom));
-            let result = section_result(
-                bench.model,
-                section,
-                geometry,
-                stack.place,
-                required_area_m2(stack, |i| i == section.index),
-                actual,
-            )?;
+        for ((section, geometry), ratings) in stack.sections.iter().zip(geometry).zip(ratings.by_ref()) {
+            let required_area_m2 = required_area_m2(stack, |i| i == section.index);
+            let result = section_result(bench.model, section, geometry, stack.place, required_area_m2, ratings)?;
             out.push((section.index, result));
         }
     }
@@ -51,15 +37,8 @@ fn section_result(
     geometry: &SectionGeometry,
     place: Place,
     required_area_m2: f64,
-    actual: Option<f64>,
+    (required, at_actual): &BothRatings<'_>,
 ) -> EngineResult<SectionResult> {
-    let rated = |factor: f64| {
-        rate(section, geometry, DESIGN, factor).map_err(|beyond| {
-            no_answer_at(model, DESIGN, Beyond { section: section.index, row: beyond.row }, geometry.area_m2, factor)
-        })
-    };
-    let required = rated(1.0)?;
-    let at_actual = actual.map(rated).transpose()?;
     let loads = section.loads_at(DESIGN);
     let flood = required.flood();
     let row = flood.and_then(|f| f.row).unwrap_or(0);
@@ -89,7 +68,7 @@ fn section_result(
         flow_parameter: load.flow_parameter(),
         liquid_load,
         friction: required.friction_pa.map(Pressure::from_si),
-        friction_actual: at_actual.and_then(|r| r.friction_pa).map(Pressure::from_si),
+        friction_actual: at_actual.as_ref().and_then(|r| r.friction_pa).map(Pressure::from_si),
         static_head: Pressure::from_si(section.static_pa(DESIGN)),
         governing_stage: stage(row),
         in_range: outside.0.is_empty() && outside.1.is_empty(),

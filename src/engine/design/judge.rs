@@ -3,7 +3,7 @@
 use super::arrangement::Arrangement;
 use super::column::{ends_drop_pa, required_drop_pa};
 use super::limits::{Limit, amount};
-use super::model::{CompiledSection, Model, Stack};
+use super::model::{CompiledSection, Model};
 use super::rate::{AT_LIMIT, Judged, SectionRating, rate};
 use super::state::{PointState, absent_because, no_answer_at};
 use super::zone::{Beyond, Exponents, Zone};
@@ -27,14 +27,65 @@ pub(crate) struct Bench<'m, 'a> {
     pub arrangement: &'m Arrangement,
     /// By point.
     pub states: &'m [PointState],
+    /// By point, sections in the order of the stacks: at the required shares, and at the actual ones if there are any.
+    ratings: Vec<Vec<BothRatings<'m>>>,
 }
 
-impl Bench<'_, '_> {
+/// A section's rating at the required and, if there is a balance, at the actual shares.
+pub(crate) type BothRatings<'m> = (SectionRating<'m>, Option<SectionRating<'m>>);
+
+impl<'m, 'a> Bench<'m, 'a> {
+    /// Rates every section at every point.
+    ///
+    /// # Errors
+    /// A row beyond flood.
+    pub fn new(model: &'m Model<'a>, arrangement: &'m Arrangement, states: &'m [PointState]) -> EngineResult<Self> {
+        let mut bench = Self { model, arrangement, states, ratings: Vec::with_capacity(states.len()) };
+        for point in 0..states.len() {
+            let of_point = bench.rate_point(point)?;
+            bench.ratings.push(of_point);
+        }
+        Ok(bench)
+    }
+
+    fn rate_point(&self, point: usize) -> EngineResult<Vec<BothRatings<'m>>> {
+        let mut out = Vec::new();
+        for (stack, (geometry, _)) in self.model.stacks().zip(self.arrangement.stacks()) {
+            let state = self.states.get(point);
+            let bottom = match stack.place {
+                Place::Compartment(side) => state.and_then(|s| s.actual_factor(self.model, point, side)),
+                // Above and below the wall nothing depends on the shares.
+                _ => state.and_then(|s| s.actual.as_ref()).map(|_| 1.0),
+            };
+            for (section, geometry) in stack.sections.iter().zip(geometry) {
+                let rated = |factor: f64| {
+                    rate(section, geometry, point, factor).map_err(|beyond| {
+                        let beyond = Beyond { section: section.index, row: beyond.row };
+                        no_answer_at(self.model, point, beyond, geometry.area_m2, factor)
+                    })
+                };
+                let actual = bottom.map(|bottom| section.factor(point, bottom));
+                let required = rated(1.0)?;
+                let actual = match actual {
+                    Some(1.0) => Some(required.clone()),
+                    other => other.map(rated).transpose()?,
+                };
+                out.push((required, actual));
+            }
+        }
+        Ok(out)
+    }
+
+    /// Ratings of one point, sections in the order of the stacks.
+    pub fn ratings(&self, point: usize) -> &[BothRatings<'m>] {
+        self.ratings.get(point).map_or(&[], Vec::as_slice)
+    }
+
     /// All findings, worst first, otherwise in the order of the case.
     pub fn findings(&self) -> EngineResult<Vec<Finding>> {
         let mut out = Vec::new();
         for point in 0..self.model.points.len() {
-            self.sections(point, &mut out)?;
+            self.sections(point, &mut out);
             self.split(point, &mut out)?;
             self.column(point, &mut out);
             self.loads_agree(point, &mut out);
@@ -53,36 +104,10 @@ impl Bench<'_, '_> {
         rows.and_then(|rows| rows.get(row)).map_or("", |row| row.stage.as_str())
     }
 
-    /// Sections with their geometry and, at a point, the factor on their vapour at the actual shares.
-    fn each_section(
-        &self,
-        point: usize,
-        mut act: impl FnMut(&Stack<'_>, &CompiledSection<'_>, &SectionGeometry, Option<f64>) -> EngineResult<()>,
-    ) -> EngineResult<()> {
-        for (stack, (geometry, _)) in self.model.stacks().zip(self.arrangement.stacks()) {
-            let bottom = match stack.place {
-                Place::Compartment(side) => {
-                    self.states.get(point).and_then(|s| s.actual_factor(self.model, point, side))
-                }
-                _ => None,
-            };
-            for (section, geometry) in stack.sections.iter().zip(geometry) {
-                act(stack, section, geometry, bottom.map(|bottom| section.factor(point, bottom)))?;
-            }
-        }
-        Ok(())
-    }
-
-    fn sections(&self, point: usize, out: &mut Vec<Finding>) -> EngineResult<()> {
-        self.each_section(point, |_, section, geometry, actual| {
-            let rated = |factor: f64| {
-                rate(section, geometry, point, factor).map_err(|beyond| {
-                    let beyond = Beyond { section: section.index, row: beyond.row };
-                    no_answer_at(self.model, point, beyond, geometry.area_m2, factor)
-                })
-            };
-            let required = rated(1.0)?;
-            let actual = actual.map(rated).transpose()?;
+    fn sections(&self, point: usize, out: &mut Vec<Finding>) {
+        let sections = self.model.stacks().zip(self.arrangement.stacks());
+        let sections = sections.flat_map(|(stack, (geometry, _))| stack.sections.iter().zip(geometry));
+        for ((section, geometry), (required, actual)) in sections.zip(self.ratings(point)) {
             for judged in &required.judged {
                 // The layout does not change with the point.
                 if judged.criterion == Criterion::FlowPath && point != 0 {
@@ -96,8 +121,7 @@ impl Bench<'_, '_> {
                 out.push(self.of_section(section, point, judged, shares));
             }
             self.ranges(section, geometry, point, out);
-            Ok(())
-        })
+        }
     }
 
     fn of_section(&self, section: &CompiledSection<'_>, point: usize, judged: &Judged<'_>, shares: Shares) -> Finding {

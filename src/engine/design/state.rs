@@ -108,12 +108,12 @@ pub(crate) fn no_answer(
     no_answer_at(model, point, beyond, area_m2, bottom)
 }
 
-/// The error for a row beyond flood anywhere.
-pub(crate) fn no_answer_at(model: &Model<'_>, point: usize, beyond: Beyond, area_m2: f64, bottom: f64) -> EngineError {
+/// The error for a row beyond flood anywhere; `factor` is that on the section's vapour.
+pub(crate) fn no_answer_at(model: &Model<'_>, point: usize, beyond: Beyond, area_m2: f64, factor: f64) -> EngineError {
     let compiled = model.stacks().flat_map(|stack| &stack.sections).find(|s| s.index == beyond.section);
     let case_point = model.case.points.get(point);
     let row = case_point.and_then(|p| p.loads.get(beyond.section)).and_then(|rows| rows.get(beyond.row));
-    let load = compiled.and_then(|s| s.loads_at(point).get(beyond.row).map(|l| l.with_vapour(s.factor(point, bottom))));
+    let load = compiled.and_then(|s| s.loads_at(point).get(beyond.row).map(|l| l.with_vapour(factor)));
     let flood = compiled.zip(load).map(|(s, load)| s.model.flooding_area_m2(&load) / area_m2);
     EngineError::NoAnswer {
         correlation: compiled.and_then(|s| s.model.drop_method()).unwrap_or("pressure drop").to_owned(),
