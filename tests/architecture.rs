@@ -71,9 +71,7 @@ fn without_tests(name: &str, text: &str) -> (String, Vec<String>) {
             } else if let Some(module) = item.strip_prefix("mod ").and_then(|rest| rest.strip_suffix(';')) {
                 modules.push(module_file(name, module, path));
                 break;
-            } else if item.ends_with(';') && line.len() - line.trim_start().len() == indent {
-                break;
-            } else if item == "}" && line.len() - line.trim_start().len() == indent {
+            } else if (item.ends_with(';') || item == "}") && line.len() - line.trim_start().len() == indent {
                 break;
             }
         }

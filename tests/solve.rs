@@ -1,7 +1,6 @@
 //! The root finder, the walk and the scan, and the adapter around argmin: numerics without physics.
 //!
 //! Roots and minima are those of the textbook functions named beside them. Ceilings on evaluations stand in for timings.
-#![allow(missing_docs)]
 
 use approx::assert_relative_eq;
 use chordwall::engine::error::{EngineError, EngineResult};
