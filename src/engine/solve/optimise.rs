@@ -1,12 +1,13 @@
 //! Outer design unknowns by argmin. The only file that knows argmin, and it does not trust it: every evaluation is checked to
 //! be finite, iterations are capped, and the outcome is judged here.
 
+use super::root::Failure;
 use crate::engine::error::{EngineError, EngineResult};
-use argmin::core::{CostFunction, Error, Executor, State};
-use argmin::solver::brent::BrentRoot;
-use std::cell::{Cell, RefCell};
+use argmin::core::{CostFunction, Error, Executor, IterState, Solver, State, TerminationReason};
+use argmin::solver::brent::{BrentOpt, BrentRoot};
+use std::cell::RefCell;
 
-/// Iterations after which a search is given up; Brent's method on a sensible bracket needs a dozen.
+/// Iterations after which a search is given up; Brent's methods on a sensible bracket need a dozen or two.
 const MAX_ITERATIONS: u64 = 200;
 
 /// What is sought between which ends, and how closely.
@@ -24,14 +25,35 @@ pub struct DesignRoot<'a> {
     pub at_ends: (f64, f64),
 }
 
-/// A function that argmin may call: it remembers the first failure, and the evaluation nearest zero.
+/// What is to be made least between which ends, and how closely.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct DesignMinimum<'a> {
+    /// Name of the unknown, for messages.
+    pub what: &'a str,
+    /// One end of the range.
+    pub from: f64,
+    /// The other end.
+    pub to: f64,
+    /// Absolute tolerance of the unknown. Below some 1e-8 of the unknown a minimum is too flat to be told.
+    pub tolerance: f64,
+}
+
+/// A least value and where it is.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Minimum {
+    /// Where.
+    pub at: f64,
+    /// The function there.
+    pub value: f64,
+}
+
+/// A function that argmin may call: it remembers the first failure.
 struct Guarded<'a, F> {
     what: &'a str,
-    /// Both ends with their values, so that they are not worked out again.
-    ends: [(f64, f64); 2],
+    /// Points with known values, so that they are not worked out again.
+    known: &'a [(f64, f64)],
     function: RefCell<F>,
     failure: RefCell<Option<EngineError>>,
-    best: Cell<Option<(f64, f64)>>,
 }
 
 impl<F: FnMut(f64) -> EngineResult<f64>> CostFunction for &Guarded<'_, F> {
@@ -39,54 +61,87 @@ impl<F: FnMut(f64) -> EngineResult<f64>> CostFunction for &Guarded<'_, F> {
     type Output = f64;
 
     fn cost(&self, x: &f64) -> Result<f64, Error> {
-        let known = self.ends.iter().find(|(end, _)| end == x).map(|(_, value)| *value);
+        let known = self.known.iter().find(|(point, _)| point == x).map(|(_, value)| *value);
         let value = known.map_or_else(|| (self.function.borrow_mut())(*x), Ok).and_then(|value| {
             if value.is_finite() {
                 Ok(value)
             } else {
-                Err(EngineError::NotFinite { what: format!("the residual of {} at {x}", self.what), value })
+                Err(EngineError::NotFinite { what: format!("the function of {} at {x}", self.what), value })
             }
         });
-        match value {
-            Ok(value) => {
-                if self.best.get().is_none_or(|(_, best)| value.abs() < best.abs()) {
-                    self.best.set(Some((*x, value)));
-                }
-                Ok(value)
-            }
-            Err(error) => {
-                let stop = Error::msg(error.to_string());
-                *self.failure.borrow_mut() = Some(error);
-                Err(stop)
-            }
+        value.map_err(|error| {
+            let stop = Error::msg(error.to_string());
+            *self.failure.borrow_mut() = Some(error);
+            stop
+        })
+    }
+}
+
+impl<F: FnMut(f64) -> EngineResult<f64>> Guarded<'_, F> {
+    /// Runs a solver of argmin to its own convergence and gives its last point and cost. Not the best of all evaluations: where the
+    /// function jumps across zero, an end of the bracket may lie nearer zero than either side of the jump.
+    fn run<'g, S>(&'g self, solver: S) -> EngineResult<(f64, f64)>
+    where
+        S: Solver<&'g Self, IterState<f64, (), (), (), (), f64>>,
+    {
+        let run = Executor::new(self, solver).configure(|state| state.max_iters(MAX_ITERATIONS)).run();
+        if let Some(error) = self.failure.borrow_mut().take() {
+            return Err(error);
+        }
+        let search = |why: String| EngineError::Search { what: self.what.to_owned(), why };
+        let state = run.map_err(|error| search(error.to_string()))?.state;
+        match (state.get_termination_reason(), state.get_param()) {
+            (Some(TerminationReason::SolverConverged), Some(at)) => Ok((*at, state.get_cost())),
+            _ => Err(search(format!("not settled after {MAX_ITERATIONS} iterations"))),
         }
     }
 }
 
-/// Root of a function between two ends of opposite sign, by Brent's method.
+/// Root of a function between two ends of opposite sign, by Brent's method. A function that jumps across zero gives one side of the
+/// jump.
 ///
 /// # Errors
-/// The function's own error unchanged; [`EngineError::NotFinite`]; [`EngineError::Search`] without a sign change or past the cap.
+/// The function's own error unchanged; [`EngineError::NotFinite`]; [`EngineError::Search`] for ends that are not finite, without a sign
+/// change, or past the cap.
 pub fn design_root(root: DesignRoot<'_>, function: impl FnMut(f64) -> EngineResult<f64>) -> EngineResult<f64> {
+    let DesignRoot { what, from, to, tolerance, at_ends } = root;
+    check_range(what, from, to, tolerance)?;
+    // argmin looks at the sign of the product, which loses it where the product underflows.
+    let same_sign = (at_ends.0 > 0.0 && at_ends.1 > 0.0) || (at_ends.0 < 0.0 && at_ends.1 < 0.0);
+    if same_sign {
+        return Err(Failure::NoBracket { low: from.min(to), high: from.max(to) }.in_search_for(what));
+    }
     let guarded = Guarded {
-        what: root.what,
-        ends: [(root.from, root.at_ends.0), (root.to, root.at_ends.1)],
+        what,
+        known: &[(from, at_ends.0), (to, at_ends.1)],
         function: RefCell::new(function),
         failure: RefCell::new(None),
-        best: Cell::new(None),
     };
-    let solver = BrentRoot::new(root.from, root.to, root.tolerance);
-    let run = Executor::new(&guarded, solver).configure(|state| state.max_iters(MAX_ITERATIONS)).run();
-    let search = |why: String| EngineError::Search { what: root.what.to_owned(), why };
-    if let Some(error) = guarded.failure.borrow_mut().take() {
-        return Err(error);
+    guarded.run(BrentRoot::new(from, to, tolerance)).map(|(at, _)| at)
+}
+
+/// Least value of a function that falls and then rises between two ends, by Brent's method. The ends themselves are not asked
+/// for: a function that only rises or only falls gives a point within the tolerance of one.
+///
+/// # Errors
+/// The function's own error unchanged; [`EngineError::NotFinite`]; [`EngineError::Search`] for ends that are not finite, or past the cap.
+pub fn design_minimum(
+    minimum: DesignMinimum<'_>,
+    function: impl FnMut(f64) -> EngineResult<f64>,
+) -> EngineResult<Minimum> {
+    let DesignMinimum { what, from, to, tolerance } = minimum;
+    check_range(what, from, to, tolerance)?;
+    let guarded = Guarded { what, known: &[], function: RefCell::new(function), failure: RefCell::new(None) };
+    let solver = BrentOpt::new(from.min(to), from.max(to)).set_tolerance(f64::EPSILON.sqrt(), tolerance);
+    guarded.run(solver).map(|(at, value)| Minimum { at, value })
+}
+
+fn check_range(what: &str, from: f64, to: f64, tolerance: f64) -> EngineResult<()> {
+    if !(to - from).is_finite() {
+        return Err(Failure::Ends { low: from, high: to }.in_search_for(what));
     }
-    match run {
-        Ok(result) if result.state.get_iter() >= MAX_ITERATIONS => {
-            Err(search(format!("not settled after {MAX_ITERATIONS} iterations between {} and {}", root.from, root.to)))
-        }
-        // The evaluation nearest zero is never worse than the last one, which is what the state keeps.
-        Ok(_) => guarded.best.get().map(|(x, _)| x).ok_or_else(|| search("nothing was evaluated".to_owned())),
-        Err(error) => Err(search(format!("between {} and {}: {error}", root.from, root.to))),
+    if !(tolerance.is_finite() && tolerance >= 0.0) {
+        return Err(EngineError::Search { what: what.to_owned(), why: format!("{tolerance} is no tolerance") });
     }
+    Ok(())
 }
