@@ -6,7 +6,7 @@ use super::number::{Display, percent, significant};
 use super::text::inert;
 use crate::engine::case::Case;
 use crate::engine::result::{Answer, SectionResult};
-use crate::engine::units::{Length, Si};
+use crate::engine::units::Length;
 
 fn table(title: &str, heads: &[&str], rows: Vec<Vec<String>>, words: usize) -> Table {
     Table { title: title.to_owned(), heads: heads.iter().map(|h| (*h).to_owned()).collect(), rows, words }
