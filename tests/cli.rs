@@ -5,6 +5,8 @@
 mod files;
 #[path = "cli/json.rs"]
 mod json;
+#[path = "cli/outputs.rs"]
+mod outputs;
 #[path = "cli/screens.rs"]
 mod screens;
 #[path = "cli/statuses.rs"]

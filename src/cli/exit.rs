@@ -47,9 +47,6 @@ pub enum Stop {
     /// The engine has no answer.
     #[error("{0}")]
     Engine(#[from] EngineError),
-    /// The reader of the output went away; nothing to say.
-    #[error("output closed")]
-    OutputClosed,
 }
 
 impl Stop {
@@ -65,17 +62,6 @@ impl Stop {
                     Exit::BadInput
                 }
             },
-            Self::OutputClosed => Exit::Met,
-        }
-    }
-}
-
-impl From<std::io::Error> for Stop {
-    /// Errors of writing to standard output; files are wrapped where their path is known.
-    fn from(error: std::io::Error) -> Self {
-        match error.kind() {
-            std::io::ErrorKind::BrokenPipe => Self::OutputClosed,
-            _ => Self::Usage(format!("standard output cannot be written: {error}")),
         }
     }
 }

@@ -4,6 +4,7 @@ pub mod args;
 mod commands;
 pub mod exit;
 mod files;
+mod output;
 mod render;
 mod run;
 

@@ -2,7 +2,8 @@
 
 use super::args::{Cli, Command};
 use super::commands;
-use super::exit::{Exit, Stop};
+use super::exit::Exit;
+use super::output::print;
 use super::render;
 use clap::Parser;
 use std::ffi::OsString;
@@ -29,13 +30,15 @@ pub fn run(
         Err(error) => {
             let text = error.render();
             // Help and version are answers; everything else is a mistake in what was typed.
-            let (sink, exit, colour): (&mut dyn Write, Exit, bool) = if error.use_stderr() {
-                (stderr, Exit::BadInput, terminal.colour_err)
+            let mistake = error.use_stderr();
+            let colour = if mistake { terminal.colour_err } else { terminal.colour_out };
+            let text = if colour { text.ansi().to_string() } else { text.to_string() };
+            return if mistake {
+                // A mistake stays one even if nobody can read what is said about it.
+                write!(stderr, "{text}").map_or(Exit::BadInput, |()| Exit::BadInput)
             } else {
-                (stdout, Exit::Met, terminal.colour_out)
+                print(stdout, text.as_bytes()).map_or_else(|stop| stop.exit(), |()| Exit::Met)
             };
-            let written = if colour { write!(sink, "{}", text.ansi()) } else { write!(sink, "{text}") };
-            return written.map_or(Exit::Met, |()| exit);
         }
     };
     let outcome = match &cli.command {
@@ -48,17 +51,11 @@ pub fn run(
             commands::methods::methods(name.as_deref(), *json, correlations.as_deref(), stdout)
         }
         Command::Schema { of } => commands::schema::schema(*of, stdout),
-        Command::Generate { what } => commands::generate::generate(*what, stdout),
+        Command::Generate { what } => commands::generate::generate(what, stdout),
     };
     outcome.unwrap_or_else(|stop| {
         let text = render::stop(&stop, terminal.colour_err);
         // If even this cannot be written, the status still says what happened.
         write!(stderr, "{text}").map_or(stop.exit(), |()| stop.exit())
     })
-}
-
-impl From<&Stop> for Exit {
-    fn from(stop: &Stop) -> Self {
-        stop.exit()
-    }
 }

@@ -83,11 +83,28 @@ fn strings(cells: &[&str]) -> Vec<String> {
     cells.iter().map(|c| (*c).to_owned()).collect()
 }
 
-/// A cell that a spreadsheet would take for a formula gets a leading apostrophe; numbers stay numbers.
+/// What begins a formula in one spreadsheet or another; the wide forms do where they are typed.
+const FORMULA: [char; 8] = ['=', '+', '-', '@', '\u{ff1d}', '\u{ff0b}', '\u{ff0d}', '\u{ff20}'];
+
+/// A cell that a spreadsheet would take for a formula gets a leading apostrophe; numbers stay numbers. Where the list separator is a
+/// semicolon, a spreadsheet cuts the cell there, so what follows one is looked at as well.
 fn inert_cell(text: &str) -> String {
     let text = inert(text);
-    let formula = text.starts_with(['=', '+', '-', '@', '\t', '\r']) && text.parse::<f64>().is_err();
-    if formula { format!("'{text}") } else { text }
+    if text.parse::<f64>().is_ok() {
+        return text;
+    }
+    let mut out = String::with_capacity(text.len() + 1);
+    for (index, part) in text.split(';').enumerate() {
+        if index > 0 {
+            out.push(';');
+        }
+        let quotes: &[char] = &['"', ' '];
+        if part.trim_start_matches(quotes).starts_with(FORMULA) && (index == 0 || !part.starts_with(' ')) {
+            out.push('\'');
+        }
+        out.push_str(part);
+    }
+    out
 }
 
 #[cfg(test)]
@@ -98,6 +115,13 @@ mod tests {
     fn cells_that_look_like_formulas_become_text() {
         for (cell, written) in
             [("=1+1", "'=1+1"), ("@x", "'@x"), ("-2.5", "-2.5"), ("+cmd", "'+cmd"), ("feed side", "feed side")]
+                .into_iter()
+                .chain([
+                    ("  =1+1", "'  =1+1"),
+                    ("x;=1+1", "x;'=1+1"),
+                    ("share 0.7; -2.4 mbar", "share 0.7; -2.4 mbar"),
+                    ("\u{ff1d}1+1", "'\u{ff1d}1+1"),
+                ])
         {
             assert_eq!(inert_cell(cell), written);
         }

@@ -2,6 +2,7 @@
 
 use super::findings::{si, unit};
 use super::model::{Meta, Show};
+use super::text::steers;
 use crate::engine::case::Case;
 use crate::engine::findings::{Finding, LimitUsed};
 use crate::engine::result::{Answer, CompartmentResult, Remedy, SectionResult, StageResult, TrayResult, WallResult};
@@ -67,9 +68,23 @@ pub fn document(case: &Case, answer: &Answer, meta: &Meta, show: Show) -> Value 
 /// # Errors
 /// Never for documents of this module; the type says so of serde.
 pub fn bytes(document: &Value) -> Result<Vec<u8>, serde_json::Error> {
-    let mut bytes = serde_json::to_vec_pretty(document)?;
-    bytes.push(b'\n');
-    Ok(bytes)
+    Ok(quiet(&serde_json::to_string_pretty(document)?).into_bytes())
+}
+
+/// Characters that steer a terminal or an eye as escapes of JSON, with a line end behind the document: what a program reads is the
+/// same, and a person who looks at it is not misled. Such characters stand only inside strings, but for the ends of lines.
+fn quiet(text: &str) -> String {
+    let mut out = String::with_capacity(text.len() + 1);
+    for c in text.chars() {
+        if c != '\n' && steers(c) {
+            let mut units = [0; 2];
+            out.extend(c.encode_utf16(&mut units).iter().map(|unit| format!("\\u{unit:04x}")));
+        } else {
+            out.push(c);
+        }
+    }
+    out.push('\n');
+    out
 }
 
 fn wall(w: &WallResult) -> Value {
@@ -211,4 +226,18 @@ fn remedy(r: &Remedy) -> Value {
             "floods": p.floods,
         })).collect::<Vec<_>>(),
     })
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn characters_that_steer_are_escaped_and_read_back_the_same() {
+        let document = json!({ "tag": "a\u{9b}31m\u{202e}b\u{e0041}\u{7f}c\nd ä" });
+        let bytes = bytes(&document).unwrap();
+        let text = std::str::from_utf8(&bytes).unwrap();
+        assert!(text.contains("\\u009b31m\\u202eb\\udb40\\udc41\\u007fc\\nd ä"), "{text}");
+        assert_eq!(serde_json::from_slice::<Value>(&bytes).unwrap(), document);
+    }
 }

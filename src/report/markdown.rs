@@ -4,10 +4,10 @@ use super::model::{Report, Table};
 
 /// The report as Markdown bytes.
 pub fn render(report: &Report) -> Vec<u8> {
-    let mut out = format!("# {}\n\n", escape(&report.head));
+    let mut out = format!("# {}\n\n", block(&report.head));
     out += &format!("Verdict: **{}**\n\n", report.verdict.name());
     for text in std::iter::once(&report.about).chain(&report.remarks).filter(|t| !t.is_empty()) {
-        out += &format!("{}\n\n", escape(text));
+        out += &format!("{}\n\n", block(text));
     }
     for table in report.tables.iter().filter(|t| !t.rows.is_empty()) {
         out += &format!("## {}\n\n{}\n", escape(&table.title), grid(table));
@@ -28,7 +28,7 @@ pub fn render(report: &Report) -> Vec<u8> {
         if !list.is_empty() {
             out += &format!("## {title}\n\n");
             for item in list {
-                out += &format!("- {}\n", escape(item));
+                out += &format!("- {}\n", block(item));
             }
             out.push('\n');
         }
@@ -56,6 +56,17 @@ fn grid(table: &Table) -> String {
     out
 }
 
+/// Text that begins a block: what would make it a list, a rule or a heading there stands for itself too.
+fn block(text: &str) -> String {
+    let text = escape(text.trim_start());
+    let digits = text.chars().take_while(char::is_ascii_digit).count();
+    match text.chars().nth(digits) {
+        Some('-' | '+' | '=') if digits == 0 => format!("\\{text}"),
+        Some('.' | ')') if digits > 0 => format!("{}\\{}", &text[..digits], &text[digits..]),
+        _ => text,
+    }
+}
+
 /// Characters that Markdown or HTML would read as markup stand for themselves.
 fn escape(text: &str) -> String {
     let mut out = String::with_capacity(text.len());
@@ -68,18 +79,36 @@ fn escape(text: &str) -> String {
                 out.push('\\');
                 out.push(c);
             }
+            '@' => out.push_str("&#64;"),
             c => out.push(c),
         }
     }
-    out
+    // Addresses become links of themselves where nothing breaks them.
+    out.replace("://", "&#58;//").replace("www.", "www&#46;").replace("WWW.", "WWW&#46;")
 }
 
 #[cfg(test)]
 mod tests {
-    use super::escape;
+    use super::{block, escape};
 
     #[test]
     fn text_from_a_case_cannot_become_markup() {
         assert_eq!(escape("<b>|*x*"), "&lt;b&gt;\\|\\*x\\*");
+        assert_eq!(escape("see http://a.example, www.b.example"), "see http&#58;//a.example, www&#46;b.example");
+    }
+
+    #[test]
+    fn text_from_a_case_cannot_become_a_list_or_a_rule() {
+        for (text, written) in [
+            ("- item", "\\- item"),
+            ("--- x", "\\--- x"),
+            ("1. item", "1\\. item"),
+            ("2) item", "2\\) item"),
+            ("    code", "code"),
+            ("C-210, met", "C-210, met"),
+            ("3.4 m", "3\\.4 m"),
+        ] {
+            assert_eq!(block(text), written);
+        }
     }
 }

@@ -33,13 +33,13 @@ pub fn significant(value: f64, digits: usize) -> String {
     if !value.is_finite() {
         return "n/a".to_owned();
     }
-    // The exponent of the rounded number: 0.9999 to three digits is 1.00, not 1.000.
+    // Rounded first: 9.9996 with four digits is 10.00, not 10.000.
     let rounded = format!("{value:.*e}", digits.saturating_sub(1));
-    let exponent = rounded.rsplit('e').next().and_then(|e| e.parse::<i32>().ok()).unwrap_or(0);
-    if !(-5..9).contains(&exponent) {
+    let magnitude = rounded.rsplit_once('e').and_then(|(_, exponent)| exponent.parse::<i32>().ok()).unwrap_or(0);
+    if !(-5..9).contains(&magnitude) {
         return rounded;
     }
-    let decimals = usize::try_from(digits as i32 - 1 - exponent).unwrap_or(0);
+    let decimals = usize::try_from(digits as i32 - 1 - magnitude).unwrap_or(0);
     format!("{value:.decimals$}")
 }
 
@@ -63,6 +63,8 @@ impl Display {
             Self::Si => (length.si() * 1e3, "mm"),
             Self::Us => (length.si() / INCH_M, "in"),
         };
+        // What rounds to nothing has no sign.
+        let value = if value.abs() < 0.05 { 0.0 } else { value };
         if signed { format!("{value:+.1} {unit}") } else { format!("{value:.1} {unit}") }
     }
 
@@ -174,10 +176,15 @@ mod tests {
             (0.0, 3, "0"),
             (0.99996, 3, "1.00"),
             (1.5e-9, 3, "1.50e-9"),
+            (9.9996, 4, "10.00"),
+            (-0.099996, 3, "-0.100"),
+            (999.96, 4, "1000"),
         ] {
             assert_eq!(significant(value, digits), text);
         }
         assert_eq!(significant(f64::NAN, 3), "n/a");
+        assert_eq!(Display::Si.small_length(Length::from_si(-1e-6), true), "+0.0 mm");
+        assert_eq!(Display::Si.small_length(Length::from_si(-2.46e-2), true), "-24.6 mm");
     }
 
     #[test]

@@ -27,7 +27,7 @@ pub fn render(report: &Report, colour: bool) -> String {
     }
     for table in &report.tables {
         if !table.rows.is_empty() {
-            out += &format!("\n{}\n{}", table.title, grid(table));
+            out += &format!("\n{}\n{}", paragraph(&table.title, "  "), grid(table));
         }
     }
     if !report.findings.is_empty() {
@@ -97,7 +97,8 @@ pub fn grid(table: &Table) -> String {
 fn word_widths(table: &Table) -> Vec<usize> {
     let widest = |column: usize| {
         let cells = table.rows.iter().filter_map(|row| row.get(column)).chain(table.heads.get(column));
-        cells.map(|cell| cell.chars().count()).max().unwrap_or(0)
+        // Columns of the screen, not characters: some take two. A cell may hold lines of its own.
+        cells.flat_map(|cell| cell.lines()).map(textwrap::core::display_width).max().unwrap_or(0)
     };
     let columns = table.heads.len();
     // Each column carries a blank of padding and one of separation.

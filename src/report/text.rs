@@ -3,15 +3,27 @@
 /// Width of a report on a terminal, in columns.
 pub const COLUMNS: usize = 100;
 
-/// Control characters and those that change the reading direction become visible; the rest stays.
+/// True for a character that acts instead of being seen: controls, line and paragraph separators, marks of reading direction,
+/// characters without width, and tags.
+pub fn steers(c: char) -> bool {
+    c.is_control()
+        || matches!(
+            c,
+            '\u{ad}'
+                | '\u{61c}'
+                | '\u{180e}'
+                | '\u{200b}'..='\u{200f}'
+                | '\u{2028}'..='\u{202e}'
+                | '\u{2060}'..='\u{206f}'
+                | '\u{feff}'
+                | '\u{fff9}'..='\u{fffb}'
+                | '\u{e0000}'..='\u{e007f}'
+        )
+}
+
+/// Characters that steer become visible; the rest stays.
 pub fn inert(text: &str) -> String {
-    text.chars()
-        .map(|c| match c {
-            '\u{200b}'..='\u{200f}' | '\u{202a}'..='\u{202e}' | '\u{2060}'..='\u{206f}' | '\u{feff}' => '\u{fffd}',
-            c if c.is_control() => '\u{fffd}',
-            c => c,
-        })
-        .collect()
+    text.chars().map(|c| if steers(c) { '\u{fffd}' } else { c }).collect()
 }
 
 /// Breaks at blanks, line by line: reports are plain text, and the search for the prettiest breaks costs more than the figures.
@@ -43,6 +55,9 @@ mod tests {
     #[test]
     fn escape_sequences_and_direction_marks_are_made_visible() {
         assert_eq!(inert("a\u{1b}[31mb\u{202e}c\nd"), "a\u{fffd}[31mb\u{fffd}c\u{fffd}d");
+        for c in ['\u{61c}', '\u{2028}', '\u{2066}', '\u{9b}', '\u{e0041}', '\u{ad}', '\u{feff}'] {
+            assert_eq!(inert(&format!("a{c}b")), "a\u{fffd}b");
+        }
         assert_eq!(inert("Säule 3"), "Säule 3");
     }
 }

@@ -111,11 +111,16 @@ fn one_method_is_shown_with_equation_source_range_and_checks() {
 
 #[test]
 fn completions_and_man_page_are_printed() {
-    for what in ["bash", "zsh", "fish", "powershell", "man"] {
-        let shown = run(&["generate", what]);
-        assert_eq!(shown.status, 0);
-        assert!(shown.out.len() > 500 && shown.out.contains("chordwall"), "{what}");
+    let shells = ["bash", "zsh", "fish", "powershell"].map(|shell| vec!["completions", shell]);
+    let pages = ["start", "size", "check", "methods", "schema"].map(|command| vec!["man", command]);
+    for what in shells.into_iter().chain(pages).chain([vec!["man"]]) {
+        let shown = run(&[&["generate"], &what[..]].concat());
+        assert_eq!(shown.status, 0, "{what:?}: {}", shown.err);
+        assert!(shown.out.len() > 500 && shown.out.contains("chordwall"), "{what:?}");
     }
+    let size = run(&["generate", "man", "size"]).out;
+    assert!(size.contains(".TH chordwall-size 1") && size.contains("write") && size.contains("stages"), "{size}");
+    assert_eq!(run(&["generate", "man", "frobnicate"]).status, 2);
 }
 
 #[test]

@@ -2,7 +2,8 @@
 
 use crate::cli::args::AnswerArgs;
 use crate::cli::exit::{Exit, Stop};
-use crate::cli::files;
+use crate::cli::files::{self, Staged};
+use crate::cli::output::print;
 use crate::engine::case::Case;
 use crate::engine::correlation::catalogue::Catalogue;
 use crate::engine::design::work;
@@ -13,7 +14,7 @@ use crate::report::model::{Meta, Report, Show};
 use crate::report::{csv, json, markdown, terminal};
 use sha2::{Digest, Sha256};
 use std::io::Write;
-use std::path::Path;
+use std::path::{Path, PathBuf};
 
 /// Kinds of files that `--out` writes.
 #[derive(Clone, Copy)]
@@ -38,24 +39,36 @@ fn out_kind(args: &AnswerArgs) -> Result<Option<(&Path, OutKind)>, Stop> {
     Ok(Some((path, kind)))
 }
 
+/// The files of a run: what `--out` names, and those that are complete already.
+struct Outputs<'a> {
+    out: Option<(&'a Path, OutKind)>,
+    staged: Staged,
+}
+
 /// A case that was read, with what identifies it.
 struct Read {
     text: String,
     case: Case,
     catalogue: Catalogue,
     meta: Meta,
+    /// Where the table was read, if there is one.
+    table: Option<PathBuf>,
 }
 
 /// Finds what the case leaves open; writes it into a copy of the case if asked.
 pub fn size(args: &AnswerArgs, write: Option<&Path>, colour: bool, stdout: &mut dyn Write) -> Result<Exit, Stop> {
     let out = out_kind(args)?;
     let read = read(args)?;
+    if let (Some(path), Some(table)) = (write, &read.table) {
+        files::spare(path, table, "the loads table")?;
+    }
     let answer = work(&read.case, &read.catalogue)?;
+    let mut staged = Staged::default();
     if let Some(path) = write {
         let text = write_back(&read.text, &found(&answer)).map_err(|e| Stop::Usage(e.to_string()))?;
-        files::write_whole(path, text.as_bytes())?;
+        staged.add(path, text.as_bytes())?;
     }
-    show(args, out, &read, &answer, false, colour, stdout)
+    show(args, Outputs { out, staged }, &read, &answer, false, colour, stdout)
 }
 
 /// Rates the case against every criterion and shows each limit with its origin.
@@ -63,21 +76,27 @@ pub fn check(args: &AnswerArgs, colour: bool, stdout: &mut dyn Write) -> Result<
     let out = out_kind(args)?;
     let read = read(args)?;
     let answer = work(&read.case, &read.catalogue)?;
-    show(args, out, &read, &answer, true, colour, stdout)
+    show(args, Outputs { out, staged: Staged::default() }, &read, &answer, true, colour, stdout)
 }
 
 fn read(args: &AnswerArgs) -> Result<Read, Stop> {
-    let text = files::read_text(&args.case)?;
+    let text = files::read_text(&args.case, files::MOST_CASE_BYTES)?;
     let name = files::name_of(&args.case);
     let opened = open(&name, &text).map_err(Stop::Input)?;
-    let table = opened.table().map(str::to_owned).map(|table| files::read_beside(&args.case, &table)).transpose()?;
+    let place = opened.table().map(|table| files::beside(&args.case, table));
+    let table = opened.table().map(|table| files::read_beside(&args.case, table)).transpose()?;
+    // A slip of the pen must not cost the loads: an output never replaces what it is made from.
+    if let Some(out) = &args.out {
+        files::spare(out, &args.case, "the case")?;
+        place.as_deref().map_or(Ok(()), |table| files::spare(out, table, "the loads table"))?;
+    }
     let (case, catalogue) = checked(&name, &text, opened, table.as_deref(), args.correlations.as_deref())?;
     let mut hash = Sha256::new();
     hash.update(text.as_bytes());
     hash.update(table.as_deref().unwrap_or_default().as_bytes());
     let input_sha256 = hash.finalize().iter().map(|byte| format!("{byte:02x}")).collect();
     let meta = Meta { version: env!("CARGO_PKG_VERSION").to_owned(), input_sha256, file: name };
-    Ok(Read { text, case, catalogue, meta })
+    Ok(Read { text, case, catalogue, meta, table: place })
 }
 
 /// The checked case with the correlations it needs. Only those are read: a message about a name that is not among them is made
@@ -129,15 +148,18 @@ fn found(answer: &Answer) -> Found {
     }
 }
 
+/// Prints the answer and puts the files in their places. All bytes are made and stored beside their targets first, so that a run
+/// that ends with 2 has written nothing.
 fn show(
     args: &AnswerArgs,
-    out: Option<(&Path, OutKind)>,
+    outputs: Outputs<'_>,
     read: &Read,
     answer: &Answer,
     limits: bool,
     colour: bool,
     stdout: &mut dyn Write,
 ) -> Result<Exit, Stop> {
+    let Outputs { out, mut staged } = outputs;
     let show = Show { display: args.display.into(), stages: args.stages, limits };
     let document = || json::document(&read.case, answer, &read.meta, show);
     let report = || Report::new(&read.case, answer, &read.meta, show);
@@ -148,10 +170,10 @@ fn show(
             OutKind::Csv => csv::render(answer, &read.meta).map_err(|e| Stop::Usage(e.to_string()))?,
             OutKind::Markdown => markdown::render(&report()),
         };
-        files::write_whole(path, &bytes)?;
+        staged.add(path, &bytes)?;
     }
     let bytes = if args.json { as_json()? } else { terminal::render(&report(), colour).into_bytes() };
-    stdout.write_all(&bytes)?;
-    stdout.flush()?;
+    print(stdout, &bytes)?;
+    staged.commit()?;
     Ok(answer.verdict.into())
 }

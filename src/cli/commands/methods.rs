@@ -2,6 +2,7 @@
 
 use super::answer::catalogue;
 use crate::cli::exit::{Exit, Stop};
+use crate::cli::output::print;
 use crate::engine::correlation::record::{CheckOutcome, Record};
 use crate::report::caution::CAUTION;
 use crate::report::json;
@@ -38,7 +39,7 @@ pub fn methods(name: Option<&str>, as_json: bool, dir: Option<&Path>, stdout: &m
     } else {
         list(&shown, failed).into_bytes()
     };
-    stdout.write_all(&text)?;
+    print(stdout, &text)?;
     Ok(if failed == 0 { Exit::Met } else { Exit::NotMet })
 }
 
@@ -49,30 +50,49 @@ fn list(shown: &[(&Record, Vec<CheckOutcome>)], failed: usize) -> String {
         .map(|(record, checks)| {
             let passed = checks.iter().filter(|c| c.passed).count();
             vec![
-                inert(&record.id),
-                inert(&record.title),
+                // The id has its line to itself, so that it can be copied.
+                format!("{}\n{}", inert(&record.id), inert(&record.title)),
                 format!("{}; {}", inert(&record.source.key), record.source.standing.name()),
+                ranges(record),
                 format!("{passed}/{}", checks.len()),
             ]
         })
         .collect();
-    let heads = ["correlation", "what", "source", "checks"].map(str::to_owned).to_vec();
+    let heads = ["correlation and its task", "source", "range", "checks"].map(str::to_owned).to_vec();
     let table = Table { title: String::new(), heads, rows, words: 3 };
     format!(
         "{} correlations, {} of {total} check points hold\n{}\n{}\n{}\n",
         shown.len(),
         total - failed,
         grid(&table),
-        paragraph("chordwall methods NAME shows equation, ranges, coefficients and every check point.", "  "),
+        paragraph(
+            "chordwall methods NAME shows equation, coefficients, what happens outside a range, and every check point.",
+            "  "
+        ),
         paragraph(CAUTION, "  ")
     )
 }
 
+/// The ranges that a record states, one argument after the other.
+fn ranges(record: &Record) -> String {
+    let stated: Vec<String> = record
+        .inputs
+        .iter()
+        .filter(|input| input.min.is_some() || input.max.is_some())
+        .map(|input| {
+            let unit = if input.unit.symbol == "1" { String::new() } else { format!(" {}", inert(&input.unit.symbol)) };
+            format!("{} {}{unit}", inert(&input.name).replace('_', " "), range(input.min, input.max))
+        })
+        .collect();
+    if stated.is_empty() { "none stated".to_owned() } else { stated.join("; ") }
+}
+
 fn range(min: Option<f64>, max: Option<f64>) -> String {
     match (min, max) {
-        (Some(min), Some(max)) => format!("{} to {}", significant(min, 4), significant(max, 4)),
-        (Some(min), None) => format!("from {}", significant(min, 4)),
-        (None, Some(max)) => format!("up to {}", significant(max, 4)),
+        // As the record states them: rounding or padding would say something else than the source.
+        (Some(min), Some(max)) => format!("{min} to {max}"),
+        (Some(min), None) => format!("from {min}"),
+        (None, Some(max)) => format!("up to {max}"),
         (None, None) => "no range stated".to_owned(),
     }
 }

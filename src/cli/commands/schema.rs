@@ -2,6 +2,7 @@
 
 use crate::cli::args::SchemaOf;
 use crate::cli::exit::{Exit, Stop};
+use crate::cli::output::print;
 use crate::input::{bid_schema, case_schema};
 use crate::report::json;
 use std::io::Write;
@@ -12,6 +13,6 @@ pub fn schema(of: SchemaOf, stdout: &mut dyn Write) -> Result<Exit, Stop> {
         SchemaOf::Case => case_schema(),
         SchemaOf::Bid => bid_schema(),
     };
-    stdout.write_all(&json::bytes(&schema).map_err(|e| Stop::Usage(e.to_string()))?)?;
+    print(stdout, &json::bytes(&schema).map_err(|e| Stop::Usage(e.to_string()))?)?;
     Ok(Exit::Met)
 }
