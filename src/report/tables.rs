@@ -164,7 +164,7 @@ pub fn compartments(answer: &Answer, display: Display) -> Table {
         })
         .collect();
     table(
-        "Compartments",
+        "Compartments (part of the free area, clear depth, exponent of the whole drop)",
         &["compartment", "area", "part", "depth", "share req.", "share act.", "drop at req.", "static", "exp."],
         rows,
         1,
