@@ -1,6 +1,10 @@
 //! The program as a whole: statuses, files, JSON, what people read.
 #![allow(missing_docs)]
 
+#[path = "cli/correlations.rs"]
+mod correlations;
+#[path = "cli/figures.rs"]
+mod figures;
 #[path = "cli/files.rs"]
 mod files;
 #[path = "cli/json.rs"]

@@ -1,4 +1,4 @@
-//! Sections and findings as CSV, in SI, with a table's name in the first column.
+//! An answer as CSV, in SI, with a table's name in the first column. Columns are named as the keys of the JSON.
 
 use super::caution;
 use super::model::Meta;
@@ -6,17 +6,19 @@ use super::tables;
 use super::text::inert;
 use crate::engine::result::Answer;
 use crate::engine::units::Si;
+use serde_json::Value;
 
 /// What went wrong while writing to memory.
 #[derive(Debug, thiserror::Error)]
 #[error("the CSV could not be written: {0}")]
 pub struct CsvError(String);
 
-/// Sections, findings and the caution.
+/// Sections, findings and the caution; shell, walls, compartments, balance and, if it holds them, the stages as in the document
+/// that [`super::json::document`] makes of the same answer.
 ///
 /// # Errors
 /// [`CsvError`] if the writer fails (it writes to memory).
-pub fn render(answer: &Answer, meta: &Meta) -> Result<Vec<u8>, CsvError> {
+pub fn render(answer: &Answer, document: &Value, meta: &Meta) -> Result<Vec<u8>, CsvError> {
     let mut writer = csv::WriterBuilder::new().flexible(true).from_writer(Vec::new());
     let mut line = |cells: Vec<String>| {
         writer.write_record(cells.iter().map(|c| inert_cell(c))).map_err(|e| CsvError(e.to_string()))
@@ -62,6 +64,19 @@ pub fn render(answer: &Answer, meta: &Meta) -> Result<Vec<u8>, CsvError> {
             s.in_range.to_string(),
         ])?;
     }
+    for (name, rows) in tables_of(document) {
+        for (index, row) in rows.iter().enumerate() {
+            if index == 0 {
+                line(
+                    std::iter::once("table")
+                        .chain(row.iter().map(|(key, _)| key.as_str()))
+                        .map(str::to_owned)
+                        .collect(),
+                )?;
+            }
+            line(std::iter::once(name.to_owned()).chain(row.iter().map(|(_, cell)| cell.clone())).collect())?;
+        }
+    }
     let findings = tables::findings_rows(answer);
     line(std::iter::once("table".to_owned()).chain(findings.heads).collect())?;
     for row in findings.rows {
@@ -77,6 +92,56 @@ pub fn render(answer: &Answer, meta: &Meta) -> Result<Vec<u8>, CsvError> {
     line(vec!["caution".to_owned(), caution::CAUTION.to_owned()])?;
     line(vec!["caution".to_owned(), caution::from_memory(&answer.from_memory)])?;
     writer.into_inner().map_err(|e| CsvError(e.to_string()))
+}
+
+/// A row: keys and cells.
+type Row = Vec<(String, String)>;
+
+/// The tables of a document that are not written from the answer itself.
+fn tables_of(document: &Value) -> Vec<(&'static str, Vec<Row>)> {
+    let list = |value: &Value| value.as_array().cloned().unwrap_or_default();
+    let rows = |value: &Value| list(value).iter().map(|item| cells(item, "")).collect::<Vec<Row>>();
+    let of_sections = |key: &str| {
+        let mut out = Vec::new();
+        for section in list(&document["sections"]) {
+            let lead = ("section".to_owned(), section["name"].as_str().unwrap_or_default().to_owned());
+            let items = if section[key].is_object() { vec![section[key].clone()] } else { list(&section[key]) };
+            out.extend(items.iter().map(|item| std::iter::once(lead.clone()).chain(cells(item, "")).collect()));
+        }
+        out
+    };
+    vec![
+        ("tray", of_sections("tray")),
+        ("stage", of_sections("stages")),
+        ("shell", vec![cells(&document["shell"], "")]),
+        ("wall", rows(&document["walls"])),
+        ("compartment", rows(&document["compartments"])),
+        ("balance", vec![cells(&document["balance"], "")]),
+        ("solution", rows(&document["balance"]["solutions"])),
+        ("column", vec![cells(&document["column"], "")]),
+    ]
+}
+
+/// The cells of an object: objects within it by keys with a dot, lists of figures by keys with a number; lists of objects are
+/// tables of their own.
+fn cells(value: &Value, lead: &str) -> Row {
+    let mut out = Vec::new();
+    for (key, value) in value.as_object().into_iter().flatten() {
+        let key = format!("{lead}{key}");
+        match value {
+            Value::Object(_) => out.extend(cells(value, &format!("{key}."))),
+            Value::Array(list) => out.extend(
+                list.iter()
+                    .enumerate()
+                    .filter(|(_, v)| v.is_number())
+                    .map(|(i, v)| (format!("{key}.{}", i + 1), v.to_string())),
+            ),
+            Value::String(text) => out.push((key, text.clone())),
+            Value::Null => out.push((key, String::new())),
+            figure => out.push((key, figure.to_string())),
+        }
+    }
+    out
 }
 
 fn strings(cells: &[&str]) -> Vec<String> {

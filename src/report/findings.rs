@@ -60,6 +60,7 @@ pub fn met(answer: &Answer, display: Display) -> Table {
             vec![
                 f.criterion.name().to_owned(),
                 format!("{} at {}", inert(&f.subject), inert(&f.point)),
+                f.shares.name().to_owned(),
                 count.to_string(),
                 show(f.value),
                 show(f.limit),
@@ -68,9 +69,9 @@ pub fn met(answer: &Answer, display: Display) -> Table {
         .collect();
     Table {
         title: "Met (the worst figure of each criterion)".to_owned(),
-        heads: ["criterion", "worst at", "places", "figure", "limit"].map(str::to_owned).to_vec(),
+        heads: ["criterion", "worst at", "shares", "places", "figure", "limit"].map(str::to_owned).to_vec(),
         rows,
-        words: 2,
+        words: 3,
     }
 }
 

@@ -117,6 +117,14 @@ impl Display {
         }
     }
 
+    /// The step of a wall for which a change of share is stated, and the heading that says so.
+    pub fn share_step(self) -> (Length, &'static str) {
+        match self {
+            Self::Si => (Length::from_si(0.01), "share/10 mm"),
+            Self::Us => (Length::from_si(INCH_M), "share/in"),
+        }
+    }
+
     /// A weir load.
     pub fn weir_load(self, load: WeirLoad) -> String {
         match self {

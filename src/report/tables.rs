@@ -6,7 +6,7 @@ use super::number::{Display, percent, significant};
 use super::text::inert;
 use crate::engine::case::Case;
 use crate::engine::result::{Answer, SectionResult};
-use crate::engine::units::Length;
+use crate::engine::units::{Length, Si};
 
 fn table(title: &str, heads: &[&str], rows: Vec<Vec<String>>, words: usize) -> Table {
     Table { title: title.to_owned(), heads: heads.iter().map(|h| (*h).to_owned()).collect(), rows, words }
@@ -123,13 +123,22 @@ pub fn walls(answer: &Answer, display: Display) -> Table {
                 position(wall.equal_pressure_drop),
                 position(wall.vapour_load),
                 display.length(wall.chord),
-                or_dash(wall.share_per_m.map(|s| format!("{:+.4}", s * 0.01))),
+                or_dash(wall.share_per_m.map(|s| format!("{:+.4}", s * display.share_step().0.si()))),
             ]
         })
         .collect();
     table(
         "Wall",
-        &["wall", "placed by", "stands at", "equal flood", "equal drop", "vapour load", "chord", "share/10 mm"],
+        &[
+            "wall",
+            "placed by",
+            "stands at",
+            "equal flood",
+            "equal drop",
+            "vapour load",
+            "chord",
+            display.share_step().1,
+        ],
         rows,
         2,
     )
@@ -155,7 +164,7 @@ pub fn compartments(answer: &Answer, display: Display) -> Table {
         })
         .collect();
     table(
-        "Compartments",
+        "Compartments (part of the free area, clear depth, exponent of the whole drop)",
         &["compartment", "area", "part", "depth", "share req.", "share act.", "drop at req.", "static", "exp."],
         rows,
         1,

@@ -93,24 +93,31 @@ pub fn grid(table: &Table) -> String {
     grid.to_string().lines().map(|line| format!("{}\n", line.trim_end())).collect()
 }
 
-/// Widths of the columns of words: what the figures leave of the report's width, shared so that short columns give to long ones.
+/// Widths of the columns of words: what the figures leave of the report's width. Each takes its longest word if there is room
+/// for all of these, so that a name stays whole; the rest is shared so that short columns give to long ones.
 fn word_widths(table: &Table) -> Vec<usize> {
-    let widest = |column: usize| {
+    // Columns of the screen, not characters: some take two. A cell may hold lines of its own.
+    let widest = |column: usize, parts: fn(&str) -> Vec<&str>| {
         let cells = table.rows.iter().filter_map(|row| row.get(column)).chain(table.heads.get(column));
-        // Columns of the screen, not characters: some take two. A cell may hold lines of its own.
-        cells.flat_map(|cell| cell.lines()).map(textwrap::core::display_width).max().unwrap_or(0)
+        cells.flat_map(|cell| parts(cell)).map(textwrap::core::display_width).max().unwrap_or(0)
     };
+    let line = |column| widest(column, |cell| cell.lines().collect());
+    let word = |column| widest(column, |cell| cell.split_whitespace().collect());
     let columns = table.heads.len();
     // Each column carries a blank of padding and one of separation.
-    let figures: usize = (table.words..columns).map(widest).sum();
+    let figures: usize = (table.words..columns).map(line).sum();
     let mut left = COLUMNS.saturating_sub(figures + 2 * columns);
+    let room = (0..table.words).map(word).sum::<usize>() <= left;
+    let least = |column| if room { word(column) } else { LEAST_WORDS };
     let mut widths = vec![0; table.words];
     let mut order: Vec<usize> = (0..table.words).collect();
-    order.sort_by_key(|column| widest(*column));
-    for (done, column) in order.into_iter().enumerate() {
-        let fair = (left / (table.words - done)).max(LEAST_WORDS);
-        let width = widest(column).min(fair);
-        if let Some(place) = widths.get_mut(column) {
+    order.sort_by_key(|column| line(*column));
+    for (done, column) in order.iter().enumerate() {
+        // Columns still to come keep their longest words.
+        let kept: usize = if room { order.iter().skip(done + 1).map(|later| word(*later)).sum() } else { 0 };
+        let fair = (left / (table.words - done)).min(left.saturating_sub(kept)).max(least(*column));
+        let width = line(*column).min(fair);
+        if let Some(place) = widths.get_mut(*column) {
             *place = width;
         }
         left = left.saturating_sub(width);

@@ -38,14 +38,19 @@ pub fn fill(text: &str, width: usize) -> String {
     textwrap::fill(text, options(width))
 }
 
+/// Names with hyphens stay whole in running text, so that they can be copied and searched for.
+fn whole_words<'a>() -> textwrap::Options<'a> {
+    options(COLUMNS).word_splitter(textwrap::WordSplitter::NoHyphenation)
+}
+
 /// Paragraph wrapped to the report's width, with an indent for every line after the first.
 pub fn paragraph(text: &str, indent: &str) -> String {
-    textwrap::fill(text, options(COLUMNS).subsequent_indent(indent))
+    textwrap::fill(text, whole_words().subsequent_indent(indent))
 }
 
 /// A paragraph of which every line is indented.
 pub fn indented(text: &str, indent: &str) -> String {
-    textwrap::fill(text, options(COLUMNS).initial_indent(indent).subsequent_indent(indent))
+    textwrap::fill(text, whole_words().initial_indent(indent).subsequent_indent(indent))
 }
 
 #[cfg(test)]
@@ -59,5 +64,16 @@ mod tests {
             assert_eq!(inert(&format!("a{c}b")), "a\u{fffd}b");
         }
         assert_eq!(inert("Säule 3"), "Säule 3");
+    }
+
+    #[test]
+    fn names_with_hyphens_are_not_broken_in_running_text() {
+        let text = format!("{} fair-1961-capacity-cubic", "x".repeat(90));
+        assert_eq!(paragraph(&text, "  ").lines().last(), Some("  fair-1961-capacity-cubic"));
+        assert_eq!(indented(&text, "    ").lines().last(), Some("    fair-1961-capacity-cubic"));
+        assert!(
+            paragraph(&"x".repeat(250), "  ").lines().all(|line| line.len() <= COLUMNS),
+            "nothing else helps there"
+        );
     }
 }

@@ -115,6 +115,22 @@ fn screens_are_as_they_were_read_and_approved() {
 }
 
 #[test]
+fn the_first_case_and_the_messages_that_stop_a_run_read_well() {
+    let folder = tempfile::tempdir().unwrap();
+    assert_eq!(run(&["start", path(folder.path())]).status, 0);
+    let first = folder.path().join("case.toml");
+    screen_is!("size-start", &["size", path(&first)]);
+    screen_is!("check-start", &["check", path(&first)]);
+    let mistyped = copy("ketone", folder.path(), |text| {
+        text.replace("thickness = \"10 mm\"", "thicknes = \"10 mm\"").replace("\"80 mbar\"", "\"80 mm\"")
+    });
+    screen_is!("stop-2", &["size", path(&mistyped)]);
+    let narrow = copy("ketone", folder.path(), |text| text.replace("diameter = \"size\"", "diameter = \"1.2 m\""));
+    assert_eq!(run(&["check", path(&narrow)]).status, 3);
+    screen_is!("stop-3", &["check", path(&narrow)]);
+}
+
+#[test]
 fn readme_shows_what_the_program_prints() {
     let readme = std::fs::read_to_string(concat!(env!("CARGO_MANIFEST_DIR"), "/README.md")).unwrap();
     let shown = readme.split("```text\n").nth(1).unwrap().split("```").next().unwrap();

@@ -167,7 +167,7 @@ fn show(
     if let Some((path, kind)) = out {
         let bytes = match kind {
             OutKind::Json => as_json()?,
-            OutKind::Csv => csv::render(answer, &read.meta).map_err(|e| Stop::Usage(e.to_string()))?,
+            OutKind::Csv => csv::render(answer, &document(), &read.meta).map_err(|e| Stop::Usage(e.to_string()))?,
             OutKind::Markdown => markdown::render(&report()),
         };
         staged.add(path, &bytes)?;

@@ -24,9 +24,9 @@ pub fn methods(name: Option<&str>, as_json: bool, dir: Option<&Path>, stdout: &m
         .map(|record| (record, record.run_checks()))
         .collect();
     if let (Some(name), true) = (name, shown.is_empty()) {
-        let ids: Vec<&str> = catalogue.records().iter().map(|r| r.id.as_str()).collect();
-        let nearest = ids.iter().max_by(|a, b| strsim::jaro_winkler(a, name).total_cmp(&strsim::jaro_winkler(b, name)));
-        let hint = nearest.map_or_else(String::new, |id| format!("; the nearest is \"{id}\""));
+        let methods = catalogue.records().iter().flat_map(|r| r.serves.iter().map(|s| s.method.as_str()));
+        let hint = nearest(name, catalogue.records().iter().map(|r| r.id.as_str()).chain(methods))
+            .map_or_else(String::new, |known| format!("; the nearest is \"{known}\""));
         return Err(Stop::Usage(format!("there is no correlation \"{name}\"{hint}. \"chordwall methods\" lists all")));
     }
     let failed = shown.iter().flat_map(|(_, checks)| checks).filter(|check| !check.passed).count();
@@ -43,6 +43,19 @@ pub fn methods(name: Option<&str>, as_json: bool, dir: Option<&Path>, stdout: &m
     Ok(if failed == 0 { Exit::Met } else { Exit::NotMet })
 }
 
+/// Least likeness (Jaro-Winkler, 0 to 1) of a name that is worth suggesting; chosen, no source.
+const LIKE: f64 = 0.6;
+
+/// The known name that is most like what was typed, if one is like it at all.
+fn nearest<'a>(typed: &str, known: impl Iterator<Item = &'a str>) -> Option<&'a str> {
+    let typed = typed.to_lowercase();
+    known
+        .map(|name| (strsim::jaro_winkler(name, &typed), name))
+        .filter(|(likeness, _)| *likeness >= LIKE)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, name)| name)
+}
+
 fn list(shown: &[(&Record, Vec<CheckOutcome>)], failed: usize) -> String {
     let total: usize = shown.iter().map(|(_, checks)| checks.len()).sum();
     let rows = shown
@@ -52,7 +65,7 @@ fn list(shown: &[(&Record, Vec<CheckOutcome>)], failed: usize) -> String {
             vec![
                 // The id has its line to itself, so that it can be copied.
                 format!("{}\n{}", inert(&record.id), inert(&record.title)),
-                format!("{}; {}", inert(&record.source.key), record.source.standing.name()),
+                format!("{}\n{}", inert(&record.source.key), record.source.standing.name()),
                 ranges(record),
                 format!("{passed}/{}", checks.len()),
             ]
