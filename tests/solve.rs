@@ -1,13 +1,11 @@
-//! The root finder, the walk and the scan, and the adapter around argmin: numerics without physics.
+//! The root finder and the adapter around argmin: numerics without physics.
 //!
-//! Roots and minima are those of the textbook functions named beside them. Ceilings on evaluations stand in for timings.
+//! Roots are those of the textbook functions named beside them. Ceilings on evaluations stand in for timings.
 
 use approx::assert_relative_eq;
 use chordwall::engine::error::{EngineError, EngineResult};
-use chordwall::engine::solve::bracket::{Walk, expand_bracket, scan};
-use chordwall::engine::solve::optimise::{DesignMinimum, DesignRoot, design_minimum, design_root};
+use chordwall::engine::solve::optimise::{DesignRoot, design_root};
 use chordwall::engine::solve::root::{Evaluation, Failure, Outcome, Tolerance, bracketed, bracketed_with_signs};
-use std::f64::consts::PI;
 
 const CLOSE: Tolerance = Tolerance { x_abs: 1e-14, x_rel: 1e-14, max_evaluations: 200 };
 
@@ -196,85 +194,6 @@ fn a_failure_says_what_was_sought() {
 
 // ---------------------------------------------------------------- walk and scan
 
-const WALK: Walk = Walk { start: 1.0, step: 0.1, growth: 2.0, limit: 100.0, max_evaluations: 50 };
-
-#[test]
-fn a_walk_ends_at_the_first_sign_change_in_either_direction() {
-    let found = expand_bracket(WALK, |x| 10.0 - x).unwrap();
-    assert!(found.near.0 < 10.0 && found.far.0 > 10.0, "{found:?}");
-    assert_eq!((found.near.1, found.far.1), (10.0 - found.near.0, 10.0 - found.far.0));
-    // 1, 1.1, 1.3, 1.7, 2.5, 4.1, 7.3, 13.7
-    assert_eq!(found.evaluations, 8);
-    let down = Walk { step: -0.1, limit: -100.0, ..WALK };
-    let found = expand_bracket(down, |x| x + 20.0).unwrap();
-    assert!(found.near.0 > -20.0 && found.far.0 < -20.0, "{found:?}");
-}
-
-#[test]
-fn a_walk_asks_for_the_limit_last_and_never_for_more() {
-    let mut farthest = 0.0_f64;
-    let found = expand_bracket(WALK, |x| {
-        farthest = farthest.max(x);
-        1.0
-    });
-    assert_eq!((found, farthest), (Err(Failure::NoBracket { low: 1.0, high: 100.0 }), 100.0));
-    let found = expand_bracket(WALK, |x| 99.5 - x).unwrap();
-    assert_eq!(found.far.0, 100.0);
-}
-
-#[test]
-fn a_walk_stops_at_zeros_caps_and_what_is_no_number() {
-    let zero = expand_bracket(WALK, |x| x - 1.0).unwrap();
-    assert_eq!((zero.near, zero.far, zero.evaluations), ((1.0, 0.0), (1.0, 0.0), 1));
-    let capped = expand_bracket(Walk { max_evaluations: 4, ..WALK }, |_| 1.0);
-    assert_eq!(capped, Err(Failure::TooManyEvaluations { evaluations: 4 }));
-    let found = expand_bracket(WALK, |x| if x > 2.0 { f64::NAN } else { 1.0 });
-    assert!(matches!(found, Err(Failure::NotFinite { at, .. }) if (at - 2.5).abs() < 1e-12), "{found:?}");
-    for walk in [
-        Walk { step: 0.0, ..WALK },
-        Walk { step: -1.0, ..WALK },
-        Walk { growth: 0.5, ..WALK },
-        Walk { limit: f64::INFINITY, ..WALK },
-        Walk { start: f64::NAN, ..WALK },
-    ] {
-        let found = expand_bracket(walk, |x| panic!("asked for {x}"));
-        assert!(matches!(found, Err(Failure::Ends { .. })), "{walk:?}: {found:?}");
-    }
-}
-
-#[test]
-fn a_scan_finds_every_root_of_a_sine_and_each_only_once() {
-    let mut brackets = Vec::new();
-    let made = scan(0.5, 19.5, 190, |x| Evaluation::Value(x.sin()), |a, b| brackets.push((a, b))).unwrap();
-    assert_eq!(made, 191);
-    let roots: Vec<f64> = brackets.iter().map(|(a, b)| bracketed(*a, *b, CLOSE, f64::sin).unwrap().root).collect();
-    assert_eq!(roots.len(), 6);
-    for (n, root) in (1..).zip(&roots) {
-        assert_relative_eq!(*root, f64::from(n) * PI, max_relative = 1e-13);
-    }
-    // Zeros on grid points, the ends among them: once each, as intervals of no width.
-    let mut zeros = Vec::new();
-    scan(0.0, 4.0, 4, |x| Evaluation::Value(x * (x - 2.0) * (x - 4.0)), |a, b| zeros.push((a, b))).unwrap();
-    assert_eq!(zeros, [(0.0, 0.0), (2.0, 2.0), (4.0, 4.0)]);
-}
-
-#[test]
-fn a_scan_takes_signs_and_refuses_what_is_no_number_or_no_range() {
-    let mut brackets = Vec::new();
-    let f = |x: f64| if x < 0.61 { Evaluation::Value(-1.0) } else { Evaluation::Above };
-    scan(0.0, 1.0, 10, f, |a, b| brackets.push((a, b))).unwrap();
-    assert_eq!(brackets.len(), 1);
-    assert!(brackets[0].0 < 0.61 && brackets[0].1 > 0.61);
-    let nan = scan(0.0, 1.0, 10, |_| Evaluation::Value(f64::NAN), |_, _| panic!("found"));
-    assert!(matches!(nan, Err(Failure::NotFinite { at: 0.0, .. })));
-    for (low, high, n) in [(1.0, 0.0, 5), (0.0, 0.0, 5), (0.0, f64::NAN, 5), (0.0, 1.0, 0)] {
-        let found = scan(low, high, n, |x| panic!("asked for {x}"), |_, _| ());
-        assert!(matches!(found, Err(Failure::Ends { .. })), "{low} {high} {n}");
-    }
-}
-
-// ---------------------------------------------------------------- argmin behind its adapter
-
 /// The adapter on a plain function, which gives it the values at the ends as its callers do.
 fn by_argmin(from: f64, to: f64, f: impl Fn(f64) -> f64) -> EngineResult<f64> {
     let root = DesignRoot { what: "the unknown", from, to, tolerance: 1e-12, at_ends: (f(from), f(to)) };
@@ -342,9 +261,7 @@ fn same_sign_is_no_bracket_even_where_the_product_underflows() {
 fn the_functions_own_error_comes_out_unchanged() {
     let own = EngineError::Geometry { what: "a shell without a wall".to_owned() };
     let root = DesignRoot { what: "x", from: 0.0, to: 1.0, tolerance: 1e-9, at_ends: (-1.0, 1.0) };
-    assert_eq!(design_root(root, |_| Err(own.clone())), Err(own.clone()));
-    let minimum = DesignMinimum { what: "x", from: 0.0, to: 1.0, tolerance: 1e-9 };
-    assert_eq!(design_minimum(minimum, |_| Err(own.clone())), Err(own));
+    assert_eq!(design_root(root, |_| Err(own.clone())), Err(own));
 }
 
 #[test]
@@ -357,34 +274,4 @@ fn a_function_that_jumps_ends_within_the_cap() {
     });
     assert!(found.is_ok_and(|x| (x - 0.123).abs() < 1e-12));
     assert!(made <= 200, "{made} evaluations");
-}
-
-#[test]
-fn a_minimum_is_found_in_either_order_of_the_ends() {
-    let minimum = DesignMinimum { what: "x", from: 0.0, to: 5.0, tolerance: 1e-9 };
-    for minimum in [minimum, DesignMinimum { from: 5.0, to: 0.0, ..minimum }] {
-        // x - ln x is least at 1, where it is 1.
-        let mut made = 0;
-        let found = design_minimum(minimum, |x| {
-            made += 1;
-            Ok(x - x.ln())
-        })
-        .unwrap();
-        // A minimum is flat: half the digits of the value.
-        assert_relative_eq!(found.at, 1.0, epsilon = 1e-7);
-        assert_relative_eq!(found.value, 1.0, epsilon = 1e-14);
-        assert!(made <= 40, "{made} evaluations");
-    }
-}
-
-#[test]
-fn a_minimum_at_an_end_is_approached_to_the_tolerance_and_no_number_is_an_error() {
-    let minimum = DesignMinimum { what: "the trim", from: 2.0, to: 5.0, tolerance: 1e-6 };
-    let found = design_minimum(minimum, Ok).unwrap();
-    assert!((2.0..2.0 + 4e-6).contains(&found.at), "{found:?}");
-    let found = design_minimum(minimum, |_| Ok(f64::NAN));
-    let Err(error) = found else { panic!("{found:?}") };
-    assert!(matches!(error, EngineError::NotFinite { .. }) && error.to_string().contains("the trim"), "{error}");
-    let endless = DesignMinimum { to: f64::INFINITY, ..minimum };
-    assert!(matches!(design_minimum(endless, Ok), Err(EngineError::Search { .. })));
 }

@@ -132,14 +132,16 @@ impl SectionLimits {
         let is_tray = matches!(kind, Some(InternalsKind::Tray(_)));
         let vacuum = is_vacuum(case, section, point);
         let (flood, flood_origin) = match (is_tray, vacuum) {
-            (true, false) => (0.80, "trays; 80 to 85 % in practice (published range, trays.md 11)"),
+            (true, false) => {
+                (0.80, "trays; 80 to 85 % in practice (textbooks: Benitez 80 %, Coulson and Richardson vol. 6 85 %)")
+            }
             (true, true) => (0.75, "trays below 0.2 bar; 75 to 80 % in practice (from memory)"),
             (false, _) => (0.75, "packing; 70 to 80 % in practice (from memory)"),
         };
         let (weep, weep_origin) = if vacuum {
-            (0.03, "weepage allowed at turndown below 0.2 bar (published practice)")
+            (0.03, "weepage allowed at turndown in vacuum (design notes, restated)")
         } else {
-            (0.07, "weepage allowed at turndown under pressure (published practice)")
+            (0.07, "weepage allowed at turndown under pressure (design notes, restated)")
         };
         let foaming = match kind {
             Some(InternalsKind::Tray(tray)) => tray.foaming,
@@ -180,13 +182,13 @@ impl SectionLimits {
                 Criterion::Entrainment,
                 |c| c.entrainment,
                 0.10,
-                "design limit (published, trays.md 4.3)",
+                "design limit restated in design notes of Fair's method",
             ),
             froth: s.or_default(
                 Criterion::DowncomerFroth,
                 |c| c.downcomer_froth,
                 0.80,
-                "80 % of spacing and weir where the froth density reflects foaming (published)",
+                "80 % of spacing and weir where the froth density reflects foaming (Kister)",
             ),
             downcomer_velocity: s.or_default(
                 Criterion::DowncomerVelocity,
@@ -210,7 +212,7 @@ impl SectionLimits {
                 Criterion::WeirLoad,
                 |c| c.weir_load.map(|w| w.si()),
                 90.0 / 3600.0,
-                "90 m3/(h m), within the published 63 to 116 at which more passes are taken",
+                "90 m3/(h m), within the 63 to 116 at which more passes are taken (Kister)",
             ),
             weir_load_least: s.or_default(
                 Criterion::WeirLoadLeast,
@@ -222,7 +224,7 @@ impl SectionLimits {
                 Criterion::FlowPath,
                 |c| c.flow_path.map(|l| l.si()),
                 0.4,
-                "shorter paths are to be avoided (published, trays.md 8.8)",
+                "shorter paths are to be avoided (Kister, Distillation Design: 0.40 to 0.46 m)",
             ),
             weep: s.or_default(Criterion::Weep, |c| c.weep, weep, weep_origin),
             wetting,

@@ -91,7 +91,7 @@ impl SieveTray {
         let flow_parameter = load.flow_parameter();
         let mut csb_m_s = self.methods.capacity.csb_m_s(self.spacing_m, flow_parameter);
         if flow_parameter < self.methods.low_flow.below_flow_parameter {
-            // The default fit keeps rising where the chart turns down, so the lower of the two stands (trays.md 3.6).
+            // The default fit keeps rising where the chart turns down, so the lower of the two stands (see the record's notes).
             csb_m_s = csb_m_s.min(self.methods.low_flow.csb_m_s(self.spacing_m, flow_parameter));
         }
         csb_m_s * self.methods.surface_tension.factor(load.sigma_n_m) * self.hole_area_factor * self.system_factor
@@ -193,7 +193,7 @@ impl SieveTray {
     }
 
     /// Crest over the weir, m, with the constriction of the converging deck: the sheet contracts to the line that lies one
-    /// first crest farther along the flow (the meaning of the chord formula in trays.md 6.5, kept for half-moons).
+    /// first crest farther along the flow (the meaning of Treybal's Eq. 6.34 for a chord, kept for half-moons).
     fn crest_m(&self, pass: &Pass, load: &StageLoad) -> f64 {
         let open_m = pass.weir.length().si() * self.weir_open;
         let flow_m3_s = load.liquid_m3_s() * pass.liquid_fraction;

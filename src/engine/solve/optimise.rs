@@ -4,7 +4,7 @@
 use super::root::Failure;
 use crate::engine::error::{EngineError, EngineResult};
 use argmin::core::{CostFunction, Error, Executor, IterState, Solver, State, TerminationReason};
-use argmin::solver::brent::{BrentOpt, BrentRoot};
+use argmin::solver::brent::BrentRoot;
 use std::cell::RefCell;
 
 /// Iterations after which a search is given up; Brent's methods on a sensible bracket need a dozen or two.
@@ -23,28 +23,6 @@ pub struct DesignRoot<'a> {
     pub tolerance: f64,
     /// The function at both ends, which whoever found the bracket has just worked out.
     pub at_ends: (f64, f64),
-}
-
-/// What is to be made least between which ends, and how closely.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct DesignMinimum<'a> {
-    /// Name of the unknown, for messages.
-    pub what: &'a str,
-    /// One end of the range.
-    pub from: f64,
-    /// The other end.
-    pub to: f64,
-    /// Absolute tolerance of the unknown. Below some 1e-8 of the unknown a minimum is too flat to be told.
-    pub tolerance: f64,
-}
-
-/// A least value and where it is.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Minimum {
-    /// Where.
-    pub at: f64,
-    /// The function there.
-    pub value: f64,
 }
 
 /// A function that argmin may call: it remembers the first failure.
@@ -78,9 +56,9 @@ impl<F: FnMut(f64) -> EngineResult<f64>> CostFunction for &Guarded<'_, F> {
 }
 
 impl<F: FnMut(f64) -> EngineResult<f64>> Guarded<'_, F> {
-    /// Runs a solver of argmin to its own convergence and gives its last point and cost. Not the best of all evaluations: where the
+    /// Runs a solver of argmin to its own convergence and gives its last point. Not the best of all evaluations: where the
     /// function jumps across zero, an end of the bracket may lie nearer zero than either side of the jump.
-    fn run<'g, S>(&'g self, solver: S) -> EngineResult<(f64, f64)>
+    fn run<'g, S>(&'g self, solver: S) -> EngineResult<f64>
     where
         S: Solver<&'g Self, IterState<f64, (), (), (), (), f64>>,
     {
@@ -91,7 +69,7 @@ impl<F: FnMut(f64) -> EngineResult<f64>> Guarded<'_, F> {
         let search = |why: String| EngineError::Search { what: self.what.to_owned(), why };
         let state = run.map_err(|error| search(error.to_string()))?.state;
         match (state.get_termination_reason(), state.get_param()) {
-            (Some(TerminationReason::SolverConverged), Some(at)) => Ok((*at, state.get_cost())),
+            (Some(TerminationReason::SolverConverged), Some(at)) => Ok(*at),
             _ => Err(search(format!("not settled after {MAX_ITERATIONS} iterations"))),
         }
     }
@@ -117,23 +95,7 @@ pub fn design_root(root: DesignRoot<'_>, function: impl FnMut(f64) -> EngineResu
         function: RefCell::new(function),
         failure: RefCell::new(None),
     };
-    guarded.run(BrentRoot::new(from, to, tolerance)).map(|(at, _)| at)
-}
-
-/// Least value of a function that falls and then rises between two ends, by Brent's method. The ends themselves are not asked
-/// for: a function that only rises or only falls gives a point within the tolerance of one.
-///
-/// # Errors
-/// The function's own error unchanged; [`EngineError::NotFinite`]; [`EngineError::Search`] for ends that are not finite, or past the cap.
-pub fn design_minimum(
-    minimum: DesignMinimum<'_>,
-    function: impl FnMut(f64) -> EngineResult<f64>,
-) -> EngineResult<Minimum> {
-    let DesignMinimum { what, from, to, tolerance } = minimum;
-    check_range(what, from, to, tolerance)?;
-    let guarded = Guarded { what, known: &[], function: RefCell::new(function), failure: RefCell::new(None) };
-    let solver = BrentOpt::new(from.min(to), from.max(to)).set_tolerance(f64::EPSILON.sqrt(), tolerance);
-    guarded.run(solver).map(|(at, value)| Minimum { at, value })
+    guarded.run(BrentRoot::new(from, to, tolerance))
 }
 
 fn check_range(what: &str, from: f64, to: f64, tolerance: f64) -> EngineResult<()> {

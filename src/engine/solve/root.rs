@@ -163,7 +163,7 @@ pub fn bracketed_with_signs(
 }
 
 /// The value at x, with an infinity where only its sign is known.
-pub(super) fn signed(x: f64, evaluation: Evaluation) -> Result<f64, Failure> {
+fn signed(x: f64, evaluation: Evaluation) -> Result<f64, Failure> {
     match evaluation {
         Evaluation::Value(value) if value.is_finite() => Ok(value),
         Evaluation::Value(value) => Err(Failure::NotFinite { at: x, value }),
