@@ -1,6 +1,7 @@
 //! The correlations and packings that are compiled in, and the user's own beside them.
 
 use super::correlation_file::{self, Content, CorrelationFileError, is_packing_table, split_table};
+use super::open::Needs;
 use crate::engine::correlation::catalogue::{Catalogue, PackingEntry};
 use crate::engine::correlation::form::Form;
 use crate::engine::correlation::record::Record;
@@ -130,23 +131,26 @@ pub fn catalogue_with(user_files: &[(String, String)]) -> Result<Catalogue, Cata
     gathered.finish()
 }
 
-/// Forms that packings need; all others are of trays.
-const PACKING_FORMS: [Form; 5] =
-    [Form::GpdLater, Form::GpdOlder, Form::FloodPressureDrop, Form::Stichlmair, Form::WettingMinimum];
-
-/// What one case needs: the correlations of trays, of packings, or of both, without their check points, and these packings.
+/// What one case needs: the correlations of the kinds of internals it has, without their check points, and these packings.
 ///
 /// # Errors
 /// As [`catalogue_of`].
-pub fn catalogue_for_case(trays: bool, packings: &[&str]) -> Result<Catalogue, CatalogueError> {
-    let packing_forms = PACKING_FORMS.map(|form| format!("form = \"{}\"", form.shape().name));
-    let wanted = |text: &str| {
-        let of_packings =
-            text.lines().take(FORM_WITHIN_LINES).any(|line| packing_forms.iter().any(|form| line == form));
-        if of_packings { !packings.is_empty() } else { trays }
+pub fn catalogue_for_case(needs: Needs, packings: &[&str]) -> Result<Catalogue, CatalogueError> {
+    let wanted = |id: &str, text: &str| {
+        let form =
+            text.lines().take(FORM_WITHIN_LINES).find_map(|line| line.strip_prefix("form = \"")?.strip_suffix('"'));
+        match form.and_then(Form::by_name) {
+            // The later chart has one set of constants for each kind of packing; its id says which.
+            Some(Form::GpdLater) => {
+                (needs.random && id.contains("random")) || (needs.structured && id.contains("structured"))
+            }
+            Some(Form::GpdOlder) => needs.random,
+            Some(Form::FloodPressureDrop | Form::Stichlmair | Form::WettingMinimum) => needs.random || needs.structured,
+            _ => needs.trays,
+        }
     };
     let ids: Vec<&str> =
-        FILES.iter().filter(|(_, text)| !is_packing_table(text) && wanted(text)).map(|(id, _)| *id).collect();
+        FILES.iter().filter(|(id, text)| !is_packing_table(text) && wanted(id, text)).map(|(id, _)| *id).collect();
     catalogue_of(&ids, packings)
 }
 
@@ -191,6 +195,8 @@ mod tests {
     use super::*;
     use crate::engine::correlation::record::Task;
 
+    const ALL: Needs = Needs { trays: true, random: true, structured: true };
+
     #[test]
     fn files_are_those_of_the_directory() {
         let mut stems: Vec<String> = std::fs::read_dir(concat!(env!("CARGO_MANIFEST_DIR"), "/correlations"))
@@ -208,7 +214,7 @@ mod tests {
     #[test]
     fn one_run_gets_the_same_records_as_the_whole_without_check_points() {
         let whole = catalogue().unwrap_or_else(|error| panic!("{error}"));
-        let run = catalogue_for_case(true, &["sheet 250/45", "slotted metal ring 50"]).unwrap();
+        let run = catalogue_for_case(ALL, &["sheet 250/45", "slotted metal ring 50"]).unwrap();
         assert_eq!(run.packing_names(), ["sheet 250/45", "slotted metal ring 50"]);
         assert_eq!(run.packing("sheet 250/45"), whole.packing("sheet 250/45"));
         assert_eq!(whole.packing_names(), packing_names());
@@ -223,14 +229,19 @@ mod tests {
 
     #[test]
     fn a_case_gets_only_the_kinds_of_records_it_needs() {
-        let ids = |trays: bool, packings: &[&str]| -> Vec<String> {
-            catalogue_for_case(trays, packings).unwrap().records().iter().map(|r| r.id.clone()).collect()
+        let ids = |needs: Needs| -> Vec<String> {
+            catalogue_for_case(needs, &[]).unwrap().records().iter().map(|r| r.id.clone()).collect()
         };
-        let (trays, packings) = (ids(true, &[]), ids(false, &["sheet 250/45"]));
-        assert!(trays.contains(&"fair-1961-capacity".to_owned()) && !trays.iter().any(|id| packings.contains(id)));
-        assert!(packings.contains(&"stichlmair-1989-pressure-drop".to_owned()));
-        assert_eq!(trays.len() + packings.len(), catalogue().unwrap().records().len());
-        assert!(ids(false, &[]).is_empty());
+        let none = Needs::default();
+        let trays = ids(Needs { trays: true, ..none });
+        let (random, structured) = (ids(Needs { random: true, ..none }), ids(Needs { structured: true, ..none }));
+        assert!(trays.contains(&"fair-1961-capacity".to_owned()));
+        assert!(!trays.iter().any(|id| random.contains(id) || structured.contains(id)));
+        assert!(random.contains(&"blackwell-1984-older-chart".to_owned()) && !structured.contains(&random[0]));
+        assert!(random.contains(&"kister-2007-later-chart-random".to_owned()));
+        assert!(structured.contains(&"kister-2007-later-chart-structured".to_owned()));
+        assert_eq!(ids(ALL).len(), catalogue().unwrap().records().len());
+        assert!(ids(none).is_empty());
     }
 
     #[test]
@@ -250,7 +261,7 @@ mod tests {
             Err(CatalogueError::NoRecord("packings-random".to_owned()))
         );
         assert_eq!(
-            catalogue_for_case(false, &["sheet 999/45"]),
+            catalogue_for_case(Needs::default(), &["sheet 999/45"]),
             Err(CatalogueError::NoPacking("sheet 999/45".to_owned()))
         );
     }

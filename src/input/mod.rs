@@ -27,6 +27,6 @@ mod unit_table;
 mod write_back;
 
 pub use diagnostic::{Diagnostic, Diagnostics, Source};
-pub use open::{MAX_FILE_BYTES, Opened, decode, open};
+pub use open::{MAX_FILE_BYTES, Needs, Opened, decode, open};
 pub use schema::{bid_schema, case_schema};
 pub use write_back::{Found, WriteBackError, write_back};

@@ -122,6 +122,17 @@ fn table_name(raw: &RawFile, sink: &mut Sink) -> Option<String> {
     None
 }
 
+/// Kinds of internals that call for correlations.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Needs {
+    /// Sieve or valve trays.
+    pub trays: bool,
+    /// Random packing.
+    pub random: bool,
+    /// Structured packing.
+    pub structured: bool,
+}
+
 impl Opened {
     /// Name of the loads table beside the case file, if the case names one in a form that may be opened: a plain file
     /// name. (A name with a path in it is reported by [`Opened::check`].)
@@ -142,10 +153,17 @@ impl Opened {
         names
     }
 
-    /// True if any internals are trays.
-    pub fn has_trays(&self) -> bool {
+    /// Which correlations the internals call for, by their kinds; a kind that is not known calls for none.
+    pub fn needs(&self) -> Needs {
         let internals = self.raw.internals.as_ref().map(|named| named.0.as_slice()).unwrap_or_default();
-        internals.iter().filter_map(|(_, internals)| internals.kind.as_ref()).any(|kind| kind.value.ends_with("tray"))
+        let has = |what: &dyn Fn(&str) -> bool| {
+            internals.iter().filter_map(|(_, internals)| internals.kind.as_ref()).any(|kind| what(&kind.value))
+        };
+        Needs {
+            trays: has(&|kind| kind.ends_with("tray")),
+            random: has(&|kind| kind == "random packing"),
+            structured: has(&|kind| kind == "structured packing"),
+        }
     }
 
     /// Checks the whole case. `table` is the text of the file named by [`Opened::table`]; without one, a case that names

@@ -137,3 +137,16 @@ fn a_reader_that_goes_away_is_no_error() {
     assert_eq!(output.status.code(), Some(0));
     assert!(output.stderr.is_empty());
 }
+
+#[test]
+fn a_packing_stated_by_its_constants_alone_is_worked_like_an_entry() {
+    let folder = tempfile::tempdir().unwrap();
+    let constants = "specific_area = \"250 m2/m3\"\nvoid_fraction = 0.97\npacking_factor = \"20 1/ft\"\nstichlmair = [5.0, 3.0, 0.45]";
+    let case = copy("ketone", folder.path(), |text| text.replace("packing = \"sheet 250/45\"", constants));
+    let (stated, entry) = (run(&["check", path(&case), "--json"]), run(&["check", &shipped("ketone"), "--json"]));
+    assert_eq!(stated.status, 0, "{}", stated.err);
+    let of = |run: &Run| -> serde_json::Value {
+        serde_json::from_str::<serde_json::Value>(&run.out).unwrap()["sections"].clone()
+    };
+    assert_eq!(of(&stated), of(&entry));
+}

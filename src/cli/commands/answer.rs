@@ -109,7 +109,7 @@ fn checked(
     dir: Option<&Path>,
 ) -> Result<(Case, Catalogue), Stop> {
     if dir.is_none()
-        && let Ok(catalogue) = builtin::catalogue_for_case(opened.has_trays(), &opened.packings())
+        && let Ok(catalogue) = builtin::catalogue_for_case(opened.needs(), &opened.packings())
         && let Ok(case) = opened.check(table, &catalogue)
     {
         return Ok((case, catalogue));

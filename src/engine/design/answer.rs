@@ -51,7 +51,7 @@ pub fn work(case: &Case, catalogue: &Catalogue) -> EngineResult<Answer> {
         shell: shell(&model, &sized),
         walls: walls(&model, &arrangement, &by_rule, &design)?,
         compartments: compartments(&model, &arrangement, &design),
-        sections: sections(&bench)?,
+        sections: sections(&bench, &findings)?,
         balance: balance(&model, &design),
         column_pressure_drop: bench.actual_drop_pa(DESIGN).map(Pressure::from_si),
         limits: limits(&model),

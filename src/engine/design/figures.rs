@@ -5,6 +5,7 @@ use super::model::{CompiledSection, Model};
 use super::size::required_area_m2;
 use crate::engine::case::Place;
 use crate::engine::error::{EngineError, EngineResult};
+use crate::engine::findings::{Criterion, Finding};
 use crate::engine::geometry::{Deck, TrayLayout};
 use crate::engine::hydraulics::load::StageLoad;
 use crate::engine::hydraulics::section::SectionGeometry;
@@ -17,13 +18,19 @@ use crate::engine::units::{
 /// The design point, at which the figures of an answer stand.
 const DESIGN: usize = 0;
 
-pub(crate) fn sections(bench: &Bench<'_, '_>) -> EngineResult<Vec<SectionResult>> {
+pub(crate) fn sections(bench: &Bench<'_, '_>, findings: &[Finding]) -> EngineResult<Vec<SectionResult>> {
+    let design = bench.model.points.first().map_or("", |p| p.name);
+    let in_range = |section: &str| {
+        !findings.iter().any(|f| f.criterion == Criterion::Range && f.point == design && f.subject == section)
+    };
     let mut out: Vec<(usize, SectionResult)> = Vec::new();
     let mut ratings = bench.ratings(DESIGN).iter();
     for (stack, (geometry, _)) in bench.model.stacks().zip(bench.arrangement.stacks()) {
         for ((section, geometry), ratings) in stack.sections.iter().zip(geometry).zip(ratings.by_ref()) {
             let required_area_m2 = required_area_m2(stack, |i| i == section.index);
-            let result = section_result(bench.model, section, geometry, stack.place, required_area_m2, ratings)?;
+            let in_range = in_range(&section.section.name);
+            let place = (stack.place, required_area_m2, in_range);
+            let result = section_result(bench.model, section, geometry, place, ratings)?;
             out.push((section.index, result));
         }
     }
@@ -35,8 +42,7 @@ fn section_result(
     model: &Model<'_>,
     section: &CompiledSection<'_>,
     geometry: &SectionGeometry,
-    place: Place,
-    required_area_m2: f64,
+    (place, required_area_m2, in_range): (Place, f64, bool),
     (required, at_actual): &BothRatings<'_>,
 ) -> EngineResult<SectionResult> {
     let loads = section.loads_at(DESIGN);
@@ -48,10 +54,6 @@ fn section_result(
     })?;
     let rows = model.case.points.first().and_then(|p| p.loads.get(section.index));
     let stage = |row: usize| rows.and_then(|rows| rows.get(row)).map_or_else(String::new, |r| r.stage.clone());
-    let mut outside = (Vec::new(), Vec::new());
-    for load in loads {
-        section.model.outside(geometry, load, &mut outside.0, &mut outside.1);
-    }
     let (f_factor, capacity_factor, liquid_load) = on_place(&load, geometry.area_m2);
     Ok(SectionResult {
         name: section.section.name.clone(),
@@ -71,7 +73,7 @@ fn section_result(
         friction_actual: at_actual.as_ref().and_then(|r| r.friction_pa).map(Pressure::from_si),
         static_head: Pressure::from_si(section.static_pa(DESIGN)),
         governing_stage: stage(row),
-        in_range: outside.0.is_empty() && outside.1.is_empty(),
+        in_range,
         tray: section
             .model
             .tray()

@@ -149,7 +149,7 @@ impl<'m, 'a> Bench<'m, 'a> {
         }
     }
 
-    /// One finding for each argument of each correlation that is outside its published range, at its worst row.
+    /// One finding for each argument of each correlation that is outside its published range, at the first such row.
     fn ranges(&self, section: &CompiledSection<'_>, geometry: &SectionGeometry, point: usize, out: &mut Vec<Finding>) {
         let mut known: Vec<(String, String)> = Vec::new();
         for (row, load) in section.loads_at(point).iter().enumerate() {

@@ -60,7 +60,7 @@ impl PointState {
                 side.friction_pa(1.0).map_err(|beyond| no_answer(model, geometry, point, index, beyond))?;
             state.required_friction_pa.push(friction_pa);
             state.required_drop_pa.push(friction_pa + side.static_pa);
-            state.required_exponents.push(side.exponents(1.0).ok());
+            state.required_exponents.push(side.exponents_at(1.0, friction_pa).ok());
         }
         if model.case.wall.reach == Reach::Middle {
             state.balance(&zone);
@@ -76,7 +76,7 @@ impl PointState {
                 .sides
                 .iter()
                 .zip(shares.iter().zip(zone.required))
-                .map(|(side, (share, required))| side.exponents(share / required).ok())
+                .map(|(side, (share, required))| side.exponents_at(share / required, pressure_pa - side.static_pa).ok())
                 .collect();
             self.actual_drop_pa = Some(pressure_pa);
             self.actual = Some(shares);

@@ -165,10 +165,14 @@ impl<'m> SideDrop<'m> {
 
     /// Response exponents at the vapour multiplied by `bottom`: of the whole drop and of the friction alone.
     pub fn exponents(&self, bottom: f64) -> Result<Exponents, Beyond> {
+        self.friction_pa(bottom).and_then(|friction_pa| self.exponents_at(bottom, friction_pa))
+    }
+
+    /// The same where the friction there is known.
+    pub fn exponents_at(&self, bottom: f64, friction: f64) -> Result<Exponents, Beyond> {
         let step = DIFFERENCE_STEP * bottom;
         let (up, down) = (self.friction_pa(bottom + step)?, self.friction_pa(bottom - step)?);
         let slope = (up - down) / (2.0 * step) * bottom;
-        let friction = self.friction_pa(bottom)?;
         Ok(Exponents { total: slope / (friction + self.static_pa), friction: slope / friction })
     }
 }

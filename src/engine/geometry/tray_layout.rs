@@ -215,18 +215,22 @@ impl Layouter {
         self.figures.downcomer_bottom_area * self.area_m2
     }
 
+    /// A line for the tops and its twin for the bottoms, which mostly have one area and then one line.
+    fn twins(&self, line_m: impl Fn(f64) -> EngineResult<f64>) -> EngineResult<(f64, f64)> {
+        let (tops_m2, bottoms_m2) = (self.tops_m2(), self.bottoms_m2());
+        let top_m = line_m(tops_m2)?;
+        Ok((top_m, if bottoms_m2 == tops_m2 { top_m } else { line_m(bottoms_m2)? }))
+    }
+
     fn along_one(&self) -> EngineResult<TrayLayout> {
-        let weir_m = corner_line_m(&self.strip, self.tops_m2())?;
-        let bottom_m = corner_line_m(&self.strip, self.bottoms_m2())?;
+        let (weir_m, bottom_m) = self.twins(|area_m2| corner_line_m(&self.strip, area_m2))?;
         let deck = self.deck_of_one(Lines { weir_m, inlet_m: -bottom_m, apron_m: bottom_m })?;
         Ok(TrayLayout { decks: [deck; 2], alternate: false })
     }
 
     fn along_two(&self) -> EngineResult<TrayLayout> {
-        let end_weir_m = corner_line_m(&self.strip, 0.5 * self.tops_m2())?;
-        let end_bottom_m = corner_line_m(&self.strip, 0.5 * self.bottoms_m2())?;
-        let centre_weir_m = band_half_width_m(&self.strip, self.tops_m2())?;
-        let centre_bottom_m = band_half_width_m(&self.strip, self.bottoms_m2())?;
+        let (end_weir_m, end_bottom_m) = self.twins(|area_m2| corner_line_m(&self.strip, 0.5 * area_m2))?;
+        let (centre_weir_m, centre_bottom_m) = self.twins(|area_m2| band_half_width_m(&self.strip, area_m2))?;
         let to_ends = [1.0, -1.0].map(|side| Lines {
             weir_m: side * end_weir_m,
             inlet_m: side * centre_bottom_m,
@@ -251,13 +255,10 @@ impl Layouter {
     }
 
     fn across_one(&self) -> EngineResult<TrayLayout> {
-        let (tops_m2, bottoms_m2) = (self.tops_m2(), self.bottoms_m2());
-        let (left_bottom_m, right_bottom_m) =
-            (self.line_beyond_left_m(bottoms_m2)?, self.line_before_right_m(bottoms_m2)?);
-        let to_left =
-            Lines { weir_m: self.line_beyond_left_m(tops_m2)?, inlet_m: right_bottom_m, apron_m: left_bottom_m };
-        let to_right =
-            Lines { weir_m: self.line_before_right_m(tops_m2)?, inlet_m: left_bottom_m, apron_m: right_bottom_m };
+        let (left_weir_m, left_bottom_m) = self.twins(|area_m2| self.line_beyond_left_m(area_m2))?;
+        let (right_weir_m, right_bottom_m) = self.twins(|area_m2| self.line_before_right_m(area_m2))?;
+        let to_left = Lines { weir_m: left_weir_m, inlet_m: right_bottom_m, apron_m: left_bottom_m };
+        let to_right = Lines { weir_m: right_weir_m, inlet_m: left_bottom_m, apron_m: right_bottom_m };
         let decks = [self.deck_of_one(to_left)?, self.deck_of_one(to_right)?];
         // A place that is its own mirror image has one deck, seen from either side.
         let alternate = self.strip.left_m() != -self.strip.right_m();
@@ -265,16 +266,14 @@ impl Layouter {
     }
 
     fn across_two(&self) -> EngineResult<TrayLayout> {
-        let (tops_m2, bottoms_m2) = (self.tops_m2(), self.bottoms_m2());
         // Downcomers at the sides.
-        let side_weirs_m = [self.line_beyond_left_m(0.5 * tops_m2)?, self.line_before_right_m(0.5 * tops_m2)?];
-        let side_bottoms_m = [self.line_beyond_left_m(0.5 * bottoms_m2)?, self.line_before_right_m(0.5 * bottoms_m2)?];
+        let left = self.twins(|area_m2| self.line_beyond_left_m(0.5 * area_m2))?;
+        let right = self.twins(|area_m2| self.line_before_right_m(0.5 * area_m2))?;
+        let (side_weirs_m, side_bottoms_m) = ([left.0, right.0], [left.1, right.1]);
         // Strips between equal halves of what they leave: equal panels on the deck that has equal downcomers at its sides.
-        let beside_tops_m2 = 0.5 * (self.area_m2 - tops_m2);
-        let beside_bottoms_m2 = 0.5 * (self.area_m2 - bottoms_m2);
-        let centre_weirs_m = [self.line_beyond_left_m(beside_tops_m2)?, self.line_before_right_m(beside_tops_m2)?];
-        let centre_bottoms_m =
-            [self.line_beyond_left_m(beside_bottoms_m2)?, self.line_before_right_m(beside_bottoms_m2)?];
+        let left = self.twins(|area_m2| self.line_beyond_left_m(0.5 * (self.area_m2 - area_m2)))?;
+        let right = self.twins(|area_m2| self.line_before_right_m(0.5 * (self.area_m2 - area_m2)))?;
+        let (centre_weirs_m, centre_bottoms_m) = ([left.0, right.0], [left.1, right.1]);
         let lines = |weirs_m: [f64; 2], inlets_m: [f64; 2], aprons_m: [f64; 2]| {
             let ([weir_1, weir_2], [inlet_1, inlet_2], [apron_1, apron_2]) = (weirs_m, inlets_m, aprons_m);
             [

@@ -154,11 +154,14 @@ impl PackedBed {
             older.chart.outside(older.flood_pa_m, abscissa(load), found);
             older.flood_drop.outside(older.factor_per_m, found);
         }
-        if let Some(gradient_pa_m) = self.friction_pa_m(area_m2, load, None) {
-            match &self.drop {
-                BedDrop::Stichlmair(_) => {}
-                BedDrop::Later { chart, .. } => chart.outside(gradient_pa_m, load.flow_parameter(), found),
-                BedDrop::Older { chart, .. } => chart.outside(gradient_pa_m, abscissa(load), found),
+        let gradient = || self.friction_pa_m(area_m2, load, None);
+        match &self.drop {
+            BedDrop::Stichlmair(_) => {}
+            BedDrop::Later { chart, .. } => {
+                gradient().into_iter().for_each(|pa_m| chart.outside(pa_m, load.flow_parameter(), found));
+            }
+            BedDrop::Older { chart, .. } => {
+                gradient().into_iter().for_each(|pa_m| chart.outside(pa_m, abscissa(load), found));
             }
         }
     }

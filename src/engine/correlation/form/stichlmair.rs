@@ -68,6 +68,9 @@ pub(crate) struct StichlmairBed {
 impl StichlmairBed {
     /// Relative tolerance of the irrigated pressure drop.
     const TOLERANCE: f64 = 1e-13;
+    /// A step this small is the last one where the slope is at least [`Self::FIRM`]: what it leaves is below the tolerance.
+    const NEARLY: f64 = 1e-8;
+    const FIRM: f64 = 0.2;
     /// Steps after which the search gives up as if flooded; near the loss of the root Newton halves the distance.
     const CAP: usize = 120;
 
@@ -124,11 +127,14 @@ impl StichlmairBed {
                 (z, from_left) = (least, true);
                 continue;
             }
-            let g = z.ln() - ln_z_dry - power * (h / self.solid).ln_1p()
-                + self.void_exponent * (-h / self.void_fraction).ln_1p();
+            // Rounding of 1 + h/(1-eps) and 1 - h/eps adds a few parts in 1e16 to g, so plain logarithms will do.
+            let g = z.ln() - ln_z_dry - power * (1.0 + h / self.solid).ln()
+                + self.void_exponent * (1.0 - h / self.void_fraction).ln();
             let step = -g / slope;
+            // What a Newton step leaves is of the order of its square; away from the loss of the root the factor is small.
+            let last = step.abs() <= Self::TOLERANCE || (slope > Self::FIRM && step.abs() <= Self::NEARLY);
             // Coming from the left only rounding makes a step non-positive.
-            if step.abs() <= Self::TOLERANCE || (from_left && step <= 0.0) {
+            if last || (from_left && step <= 0.0) {
                 return Some(z * (1.0 + step) * weight_pa_m);
             }
             from_left = true;
