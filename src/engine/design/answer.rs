@@ -5,7 +5,7 @@ use super::basis::{from_memory, limits, notes, records};
 use super::figures::sections;
 use super::judge::Bench;
 use super::model::Model;
-use super::place_wall::{COLD_STEP, Placer, Positions, equal_drop, positions};
+use super::place_wall::{Placer, Positions, equal_drop, positions};
 use super::remedy::remedies;
 use super::size::{Margin, PARTS, Part, Sized, size};
 use super::state::{PointState, absent_because, share_per_m};
@@ -189,7 +189,7 @@ fn walls(
         let drop = if absent_because(model).is_none() {
             match stated.position {
                 Position::EqualPressureDrop => Some(zone.positions_m.clone()),
-                _ => equal_drop(model, zone.diameter_m, &zone.positions_m, band, COLD_STEP).ok(),
+                _ => equal_drop(model, zone.diameter_m, &zone.positions_m, band).ok(),
             }
         } else {
             None

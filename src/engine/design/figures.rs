@@ -2,7 +2,6 @@
 
 use super::judge::{Bench, BothRatings};
 use super::model::{CompiledSection, Model};
-use super::size::required_area_m2;
 use crate::engine::case::Place;
 use crate::engine::error::{EngineError, EngineResult};
 use crate::engine::findings::{Criterion, Finding};
@@ -27,9 +26,8 @@ pub(crate) fn sections(bench: &Bench<'_, '_>, findings: &[Finding]) -> EngineRes
     let mut ratings = bench.ratings(DESIGN).iter();
     for (stack, (geometry, _)) in bench.model.stacks().zip(bench.arrangement.stacks()) {
         for ((section, geometry), ratings) in stack.sections.iter().zip(geometry).zip(ratings.by_ref()) {
-            let required_area_m2 = required_area_m2(stack, |i| i == section.index);
             let in_range = in_range(&section.section.name);
-            let place = (stack.place, required_area_m2, in_range);
+            let place = (stack.place, in_range);
             let result = section_result(bench.model, section, geometry, place, ratings)?;
             out.push((section.index, result));
         }
@@ -42,7 +40,7 @@ fn section_result(
     model: &Model<'_>,
     section: &CompiledSection<'_>,
     geometry: &SectionGeometry,
-    (place, required_area_m2, in_range): (Place, f64, bool),
+    (place, in_range): (Place, bool),
     (required, at_actual): &BothRatings<'_>,
 ) -> EngineResult<SectionResult> {
     let loads = section.loads_at(DESIGN);
@@ -62,7 +60,7 @@ fn section_result(
         flood_method: section.model.flood_method().to_owned(),
         pressure_drop_method: section.model.drop_method().map(str::to_owned),
         area: Area::from_si(geometry.area_m2),
-        required_area: Area::from_si(required_area_m2),
+        required_area: Area::from_si(section.required_area_m2),
         flood: flood.map_or(f64::NAN, |f| f.si),
         flood_actual: at_actual.as_ref().and_then(|r| r.flood().map(|f| f.si)),
         f_factor,

@@ -49,6 +49,8 @@ pub(crate) struct CompiledSection<'a> {
     travel: Vec<f64>,
     /// By point.
     pub limits: Vec<SectionLimits>,
+    /// Area of the place at which the worst row of all points stands at its flood limit, m2.
+    pub required_area_m2: f64,
 }
 
 /// One device with the load that passes it.
@@ -210,7 +212,13 @@ impl<'a> CompiledSection<'a> {
         let limits = (0..case.points.len())
             .map(|p| SectionLimits::new(case, catalogue, section, &model, p))
             .collect::<EngineResult<_>>()?;
-        Ok(Self { index, section, model, tray, loads, travel: Vec::new(), limits })
+        let mut out = Self { index, section, model, tray, loads, travel: Vec::new(), limits, required_area_m2: 0.0 };
+        for (loads, limits) in out.loads.iter().zip(&out.limits) {
+            for load in loads {
+                out.required_area_m2 = out.required_area_m2.max(out.model.flooding_area_m2(load) / limits.flood.si);
+            }
+        }
+        Ok(out)
     }
 
     /// Rows at a point, from top to bottom.

@@ -83,9 +83,7 @@ impl<'m, 'a> Placer<'m, 'a> {
             if same {
                 return Ok(standing);
             }
-            let warm = self.last.borrow().is_some();
-            let step = if warm { WARM_STEP } else { COLD_STEP };
-            standing = equal_drop(self.model, diameter_m, &standing, band, step)?;
+            standing = equal_drop(self.model, diameter_m, &standing, band)?;
             *self.last.borrow_mut() = standing.get(band).map(|found| (diameter_m, found.clone()));
         }
         Ok(standing)
@@ -113,9 +111,11 @@ impl<'m, 'a> Placer<'m, 'a> {
     }
 }
 
-/// First step of a search, as part of the diameter: where nothing is known, and beside a known neighbour.
-pub(crate) const COLD_STEP: f64 = 0.02;
-pub(crate) const WARM_STEP: f64 = 0.001;
+/// How far the wall moves, as part of the diameter, for a unit of the residual ln(drop 1/drop 2): with drops going with the square of
+/// the velocity and a wall near the axis, a tenth; a little more, so that the first step mostly crosses the root.
+const STEP_PER_RESIDUAL: f64 = 0.13;
+/// Least and greatest first step, as part of the diameter.
+const FIRST_STEPS: (f64, f64) = (1e-10, 0.05);
 
 /// What areas go in proportion to in one band, by compartment.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -134,11 +134,10 @@ impl BandWeights {
             let of = |any_band: bool| {
                 let (mut flood, mut vapour_load) = (0.0_f64, 0.0_f64);
                 for section in side.sections.iter().filter(|s| any_band || s.section.band == band) {
-                    for (point, limits) in section.limits.iter().enumerate() {
-                        for load in section.loads_at(point) {
-                            flood = flood.max(section.model.flooding_area_m2(load) / limits.flood.si);
-                            vapour_load = vapour_load.max(load.vapour_load_m3_s());
-                        }
+                    flood = flood.max(section.required_area_m2);
+                    for point in 0..section.limits.len() {
+                        let loads = section.loads_at(point).iter().map(|load| load.vapour_load_m3_s());
+                        vapour_load = loads.fold(vapour_load, f64::max);
                     }
                 }
                 (flood, vapour_load)
@@ -165,14 +164,13 @@ pub(crate) fn equal_drop(
     diameter_m: f64,
     others: &[Vec<f64>],
     band: usize,
-    first_step: f64,
 ) -> EngineResult<Vec<Vec<f64>>> {
     let with = |positions: &[f64]| -> Vec<Vec<f64>> {
         let replace = |(b, walls): (usize, &Vec<f64>)| if b == band { positions.to_vec() } else { walls.clone() };
         others.iter().enumerate().map(replace).collect()
     };
     let start = others.get(band).cloned().unwrap_or_default();
-    let found = sweep(model, diameter_m, start, first_step, |positions, wall| {
+    let found = sweep(model, diameter_m, start, |positions, wall| {
         let geometry = ZoneGeometry::new(model, diameter_m, with(positions))?;
         let zone = Zone::new(model, &geometry, DESIGN);
         let (Some(first), Some(second)) = (zone.sides.get(wall), zone.sides.get(wall + 1)) else {
@@ -195,7 +193,6 @@ fn sweep(
     model: &Model<'_>,
     diameter_m: f64,
     mut positions: Vec<f64>,
-    first_step: f64,
     residual: impl Fn(&[f64], usize) -> EngineResult<f64>,
 ) -> EngineResult<Vec<f64>> {
     let walls = positions.len();
@@ -203,7 +200,7 @@ fn sweep(
         let mut moved_m = 0.0_f64;
         for wall in 0..walls {
             let before = positions.get(wall).copied().unwrap_or(0.0);
-            let found = place_one(model, diameter_m, (&positions, wall), first_step, &residual)?;
+            let found = place_one(model, diameter_m, (&positions, wall), &residual)?;
             moved_m = moved_m.max((found - before).abs());
             if let Some(position) = positions.get_mut(wall) {
                 *position = found;
@@ -223,7 +220,6 @@ fn place_one(
     model: &Model<'_>,
     diameter_m: f64,
     (positions, wall): (&[f64], usize),
-    first_step: f64,
     residual: impl Fn(&[f64], usize) -> EngineResult<f64>,
 ) -> EngineResult<f64> {
     let thickness_m = model.case.wall.thickness.si();
@@ -246,6 +242,8 @@ fn place_one(
     let first = at(start)?;
     // Walk from the start towards the sign change, so that shapes which cannot be built near the shell are never asked for.
     let direction = if first >= 0.0 { 1.0 } else { -1.0 };
+    let (least, greatest) = FIRST_STEPS;
+    let first_step = (STEP_PER_RESIDUAL * first.abs()).clamp(least, greatest);
     let (mut near, mut at_near, mut step) = (start, first, first_step * diameter_m);
     let mut bracket = None;
     for _ in 0..60 {

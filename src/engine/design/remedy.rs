@@ -3,7 +3,7 @@
 use super::arrangement::ZoneGeometry;
 use super::balance::all_balances;
 use super::model::Model;
-use super::place_wall::{COLD_STEP, equal_drop};
+use super::place_wall::equal_drop;
 use super::state::PointState;
 use super::zone::Zone;
 use crate::engine::result::{Remedy, RemedyPoint};
@@ -57,7 +57,7 @@ fn extreme(values: &[f64], better: impl Fn(f64, f64) -> bool) -> Option<(usize, 
 }
 
 fn move_wall(model: &Model<'_>, geometry: &ZoneGeometry, band: usize) -> Option<Remedy> {
-    let positions_m = equal_drop(model, geometry.diameter_m, &geometry.positions_m, band, COLD_STEP).ok()?;
+    let positions_m = equal_drop(model, geometry.diameter_m, &geometry.positions_m, band).ok()?;
     let moved = ZoneGeometry::new(model, geometry.diameter_m, positions_m).ok()?;
     let walls = moved.positions_m.get(band)?;
     let name = model.case.wall.bands.get(band).map_or("", |b| b.name.as_str());

@@ -156,17 +156,14 @@ fn runner_up(
 
 /// Least diameter by flood alone.
 fn flood_diameter_m(model: &Model<'_>, placer: &Placer<'_, '_>, part: Part) -> EngineResult<f64> {
-    let end = |stack: &Stack<'_>| (4.0 / PI * required_area_m2(stack, |_| true)).sqrt();
+    let end = |stack: &Stack<'_>| (4.0 / PI * required_area_m2(stack)).sqrt();
     match part {
         Part::Above => Ok(end(&model.above)),
         Part::Below => Ok(end(&model.below)),
         Part::WallZone => {
-            let areas_m2: f64 = model.sides.iter().map(|side| required_area_m2(side, |_| true)).sum();
-            let sections_m2: Vec<f64> = model
-                .sides
-                .iter()
-                .flat_map(|side| side.sections.iter().map(|s| required_area_m2(side, |index| index == s.index)))
-                .collect();
+            let areas_m2: f64 = model.sides.iter().map(required_area_m2).sum();
+            let sections_m2: Vec<f64> =
+                model.sides.iter().flat_map(|side| &side.sections).map(|s| s.required_area_m2).collect();
             // The walls' own area makes the shell larger than this.
             let start_m = (4.0 / PI * areas_m2).sqrt();
             let worst = |diameter_m: f64| -> EngineResult<f64> {
@@ -182,17 +179,9 @@ fn flood_diameter_m(model: &Model<'_>, placer: &Placer<'_, '_>, part: Part) -> E
     }
 }
 
-/// Area of the place at which the worst row of all points stands at its flood limit, over the chosen sections of a stack.
-pub(crate) fn required_area_m2(stack: &Stack<'_>, chosen: impl Fn(usize) -> bool) -> f64 {
-    let mut greatest = 0.0_f64;
-    for section in stack.sections.iter().filter(|s| chosen(s.index)) {
-        for (point, limits) in section.limits.iter().enumerate() {
-            for load in section.loads_at(point) {
-                greatest = greatest.max(section.model.flooding_area_m2(load) / limits.flood.si);
-            }
-        }
-    }
-    greatest
+/// The greatest area that a section of the stack needs by flood, m2.
+fn required_area_m2(stack: &Stack<'_>) -> f64 {
+    stack.sections.iter().map(|section| section.required_area_m2).fold(0.0, f64::max)
 }
 
 /// Sizing margins of one part in a shell of this diameter; none if a row is beyond flood or the wall cannot stand in it.
@@ -260,9 +249,10 @@ fn least_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> E
         return Ok(start_m);
     }
     let (mut low_m, mut at_low) = (start_m, at_start);
-    let mut step = 1.02;
+    // Most figures go with the area, that is with the square of the diameter; a little more crosses the root at once.
+    let mut log_step = (0.51 * at_start).clamp(1e-9, 0.5);
     for _ in 0..DOUBLINGS * 8 {
-        let high_m = low_m * step;
+        let high_m = low_m * log_step.exp();
         let at_high = worst(high_m)?;
         if at_high <= 0.0 {
             let root = DesignRoot {
@@ -275,7 +265,7 @@ fn least_diameter_m(start_m: f64, worst: impl Fn(f64) -> EngineResult<f64>) -> E
             return design_root(root, |log_m| worst(log_m.exp())).map(f64::exp);
         }
         (low_m, at_low) = (high_m, at_high);
-        step = (step * step).min(2.0);
+        log_step = (2.0 * log_step).min(0.7);
         if high_m > start_m * f64::from(1 << DOUBLINGS) {
             break;
         }

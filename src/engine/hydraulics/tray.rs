@@ -325,8 +325,15 @@ impl SieveTray {
         m.hole_area.outside(self.hole_area, found);
         m.entrainment.outside(flood, flow_parameter, found);
         m.orifice.outside(self.deck_thickness_m / self.hole_diameter_m, self.hole_area, found);
-        for deck in layout.decks() {
-            for pass in deck.passes() {
+        for pass in layout.decks().iter().flat_map(Deck::passes) {
+            // The crest lies between none and that of half the weir; where both are in range it need not be worked out.
+            let half_m = 0.5 * pass.weir.length().si() * self.weir_open;
+            let most_m = m.weir.crest_m(load.liquid_m3_s() * pass.liquid_fraction / half_m, 1.0);
+            let mut doubts = Vec::new();
+            for head_m in [self.weir_height_m, self.weir_height_m + most_m] {
+                m.onset.outside(head_m, self.hole_diameter_m, load.rho_v_kg_m3, &mut doubts);
+            }
+            if !doubts.is_empty() {
                 let head_m = self.weir_height_m + self.crest_m(pass, load);
                 m.onset.outside(head_m, self.hole_diameter_m, load.rho_v_kg_m3, found);
             }
