@@ -115,7 +115,8 @@ impl<'m, 'a> Bench<'m, 'a> {
                 }
                 let other = actual.as_ref().and_then(|rating| same(rating, judged.criterion));
                 let (judged, shares) = match other {
-                    Some(other) if other.severity > judged.severity => (other, Shares::Actual),
+                    // Where both are the same but for rounding, the required shares stand.
+                    Some(other) if other.severity > judged.severity * (1.0 + AT_LIMIT) => (other, Shares::Actual),
                     _ => (judged, Shares::Required),
                 };
                 out.push(self.of_section(section, point, judged, shares));
